@@ -1,0 +1,7 @@
+namespace Pairwright.Geometry;
+
+/// <summary>A position in a picture as the lens formed it, distortion included.</summary>
+/// <remarks>(0, 0) is the centre of the top-left pixel. Not interchangeable with <see cref="IdealPixel"/>: a <see cref="Camera"/> converts.</remarks>
+/// <param name="U">To the right, in pixels.</param>
+/// <param name="V">Down, in pixels.</param>
+public readonly record struct RawPixel(double U, double V);

@@ -1,0 +1,7 @@
+namespace Pairwright.Geometry;
+
+/// <summary>A position in a rectified picture, where matching points share a row.</summary>
+/// <remarks>(0, 0) is the centre of the top-left pixel.</remarks>
+/// <param name="U">To the right, in pixels.</param>
+/// <param name="V">Down, in pixels.</param>
+public readonly record struct RectifiedPixel(double U, double V);

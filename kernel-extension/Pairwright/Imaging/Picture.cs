@@ -1,0 +1,89 @@
+using Pairwright.Geometry;
+
+namespace Pairwright.Imaging;
+
+/// <summary>A picture of 8 to 16 significant bits: one grey channel for matching, the colours kept for display where there were any.</summary>
+/// <remarks>Immutable by convention: the maker hands its arrays over and keeps no other reference to them.</remarks>
+public sealed class Picture
+{
+    private readonly ushort[] grey;
+    private readonly ushort[]? colour;
+
+    /// <summary>Makes a picture.</summary>
+    /// <param name="size">The size.</param>
+    /// <param name="grey">Grey levels, row after row, handed over.</param>
+    /// <param name="significantBits">How many bits carry the picture, 8 to 16; a level reaches at most 2^bits − 1.</param>
+    /// <param name="saturationLevel">The level at and above which a pixel counts as saturated; the largest level when left out.</param>
+    /// <param name="colour">Red, green, blue by turns, row after row, on the same scale as the grey; nothing for a grey picture.</param>
+    /// <param name="usable">Which pixels may be used; nothing where all may.</param>
+    /// <param name="capturedAt">When it was taken, where that is known.</param>
+    /// <param name="provenance">Where it came from.</param>
+    /// <exception cref="UserErrorException">The size, bits or mask do not fit.</exception>
+    public Picture(
+        PictureSize size,
+        ushort[] grey,
+        int significantBits = 8,
+        int? saturationLevel = null,
+        ushort[]? colour = null,
+        Mask? usable = null,
+        DateTimeOffset? capturedAt = null,
+        Provenance? provenance = null)
+    {
+        ArgumentNullException.ThrowIfNull(grey);
+        if (size.Width <= 0 || size.Height <= 0 || grey.LongLength != size.Area || (colour is not null && colour.LongLength != 3 * size.Area))
+        {
+            throw new UserErrorException($"A picture of {size} px does not fit {grey.LongLength} grey values; give one per pixel, and three for colour.");
+        }
+
+        if (significantBits is < 8 or > 16)
+        {
+            throw new UserErrorException($"A picture of {significantBits} significant bits is not supported; give 8 to 16.");
+        }
+
+        if (usable is not null && usable.Size != size)
+        {
+            throw new UserErrorException($"A mask of {usable.Size} px does not fit a picture of {size} px; give a mask of the picture's own size.");
+        }
+
+        (Size, this.grey, SignificantBits, this.colour, Usable, CapturedAt) = (size, grey, significantBits, colour, usable, capturedAt);
+        SaturationLevel = saturationLevel ?? ((1 << significantBits) - 1);
+        Provenance = provenance ?? Provenance.None;
+    }
+
+    /// <summary>The size.</summary>
+    public PictureSize Size { get; }
+
+    /// <summary>How many bits carry the picture, 8 to 16.</summary>
+    public int SignificantBits { get; }
+
+    /// <summary>The level at and above which a pixel counts as saturated.</summary>
+    public int SaturationLevel { get; }
+
+    /// <summary>Grey levels, row after row.</summary>
+    public ReadOnlySpan<ushort> Grey => grey;
+
+    /// <summary>Grey levels, row after row, for code that runs on several threads.</summary>
+    public ReadOnlyMemory<ushort> GreyMemory => grey;
+
+    /// <summary>Whether the picture keeps colours.</summary>
+    public bool HasColour => colour is not null;
+
+    /// <summary>Red, green, blue by turns, row after row; empty for a grey picture.</summary>
+    public ReadOnlySpan<ushort> Colour => colour;
+
+    /// <summary>Which pixels may be used; nothing where all may.</summary>
+    public Mask? Usable { get; }
+
+    /// <summary>When it was taken, where that is known.</summary>
+    public DateTimeOffset? CapturedAt { get; }
+
+    /// <summary>Where it came from.</summary>
+    public Provenance Provenance { get; }
+
+    /// <summary>The grey level at column <paramref name="u"/> of row <paramref name="v"/>.</summary>
+    public ushort this[int u, int v] => grey[(long)v * Size.Width + u];
+
+    /// <summary>The same picture with other marks of use; arrays are shared, not copied.</summary>
+    /// <param name="usable">Which pixels may be used; nothing where all may.</param>
+    public Picture WithUsable(Mask? usable) => new(Size, grey, SignificantBits, SaturationLevel, colour, usable, CapturedAt, Provenance);
+}

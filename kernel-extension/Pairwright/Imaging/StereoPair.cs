@@ -1,0 +1,42 @@
+using Pairwright.Geometry;
+
+namespace Pairwright.Imaging;
+
+/// <summary>Two pictures of one scene, taken at one time by the two cameras of a rig, as the lenses formed them.</summary>
+public sealed partial class StereoPair
+{
+    /// <summary>Makes a pair.</summary>
+    /// <param name="left">The reference picture.</param>
+    /// <param name="right">The other picture; its size may differ from the left one's.</param>
+    /// <param name="rig">The rig that took it, where it is known.</param>
+    /// <exception cref="UserErrorException">A picture's size is not that of its camera.</exception>
+    public StereoPair(Picture left, Picture right, Rig? rig = null)
+    {
+        ArgumentNullException.ThrowIfNull(left);
+        ArgumentNullException.ThrowIfNull(right);
+        (Left, Right, Rig) = (left, right, rig);
+        foreach (var view in rig is null ? [] : Enum.GetValues<View>())
+        {
+            if (rig![view].Size != this[view].Size)
+            {
+                throw new UserErrorException(
+                    $"The {view.ToString().ToLowerInvariant()} picture is {this[view].Size} px, but the rig's camera takes {rig[view].Size} px; use the rig that took the pictures.");
+            }
+        }
+    }
+
+    /// <summary>The reference picture.</summary>
+    public Picture Left { get; }
+
+    /// <summary>The other picture.</summary>
+    public Picture Right { get; }
+
+    /// <summary>The rig that took the pair, where it is known.</summary>
+    public Rig? Rig { get; }
+
+    /// <summary>Where the pair came from.</summary>
+    public Provenance Provenance => Left.Provenance.With(Right.Provenance);
+
+    /// <summary>The picture of a view.</summary>
+    public Picture this[View view] => view == View.Left ? Left : Right;
+}
