@@ -43,6 +43,12 @@ public sealed record Provenance
         }
     }
 
+    /// <summary>The provenance of a file whose content has been read already.</summary>
+    /// <param name="path">The file.</param>
+    /// <param name="content">All its bytes.</param>
+    public static Provenance OfContent(string path, ReadOnlySpan<byte> content) =>
+        new([new(Path.GetFileName(path), Convert.ToHexStringLower(SHA256.HashData(content)))], []);
+
     /// <summary>The same provenance with one more step.</summary>
     /// <param name="name">What was done.</param>
     /// <param name="settings">The settings, as short readable text.</param>

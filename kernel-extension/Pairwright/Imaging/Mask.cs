@@ -51,6 +51,15 @@ public sealed class Mask
         return new(size, entries);
     }
 
+    /// <summary>Reads a mask picture: black (level 0) forbids a pixel, every other level allows it.</summary>
+    /// <param name="path">A picture file of the size of the picture that it is for.</param>
+    /// <exception cref="UserErrorException">The file cannot be read as a picture.</exception>
+    public static Mask Read(string path)
+    {
+        var picture = Picture.Read(path);
+        return From(picture.Size, (u, v) => picture[u, v] > 0);
+    }
+
     /// <summary>What both masks allow.</summary>
     /// <exception cref="UserErrorException">The sizes differ.</exception>
     public Mask And(Mask other)

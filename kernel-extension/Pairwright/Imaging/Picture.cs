@@ -1,10 +1,11 @@
+using System.Collections.Immutable;
 using Pairwright.Geometry;
 
 namespace Pairwright.Imaging;
 
 /// <summary>A picture of 8 to 16 significant bits: one grey channel for matching, the colours kept for display where there were any.</summary>
 /// <remarks>Immutable by convention: the maker hands its arrays over and keeps no other reference to them.</remarks>
-public sealed class Picture
+public sealed partial class Picture
 {
     private readonly ushort[] grey;
     private readonly ushort[]? colour;
@@ -18,6 +19,7 @@ public sealed class Picture
     /// <param name="usable">Which pixels may be used; nothing where all may.</param>
     /// <param name="capturedAt">When it was taken, where that is known.</param>
     /// <param name="provenance">Where it came from.</param>
+    /// <param name="warnings">What its maker noticed and a user should know, one sentence each.</param>
     /// <exception cref="UserErrorException">The size, bits or mask do not fit.</exception>
     public Picture(
         PictureSize size,
@@ -27,7 +29,8 @@ public sealed class Picture
         ushort[]? colour = null,
         Mask? usable = null,
         DateTimeOffset? capturedAt = null,
-        Provenance? provenance = null)
+        Provenance? provenance = null,
+        IEnumerable<string>? warnings = null)
     {
         ArgumentNullException.ThrowIfNull(grey);
         if (size.Width <= 0 || size.Height <= 0 || grey.LongLength != size.Area || (colour is not null && colour.LongLength != 3 * size.Area))
@@ -48,6 +51,7 @@ public sealed class Picture
         (Size, this.grey, SignificantBits, this.colour, Usable, CapturedAt) = (size, grey, significantBits, colour, usable, capturedAt);
         SaturationLevel = saturationLevel ?? ((1 << significantBits) - 1);
         Provenance = provenance ?? Provenance.None;
+        ReadingWarnings = [.. warnings ?? []];
     }
 
     /// <summary>The size.</summary>
@@ -80,10 +84,60 @@ public sealed class Picture
     /// <summary>Where it came from.</summary>
     public Provenance Provenance { get; }
 
+    /// <summary>What was noticed when the picture was read, one sentence each; empty where nothing was.</summary>
+    public ImmutableArray<string> ReadingWarnings { get; }
+
     /// <summary>The grey level at column <paramref name="u"/> of row <paramref name="v"/>.</summary>
     public ushort this[int u, int v] => grey[(long)v * Size.Width + u];
 
+    /// <summary>Reads a PNG, TIFF, JPEG, BMP, PGM or PPM file of 8 to 16 bits.</summary>
+    /// <remarks>
+    /// The format is told by the content, not by the name. The significant bits are those stated in <paramref name="reading"/>, else those
+    /// that the file states (netpbm's maxval, PNG's sBIT chunk), else 8 in 8-bit files and 16 in 16-bit files; they are never guessed from
+    /// the levels. Colours become grey by ITU-R BT.601 and are kept for display. Pixels stay as stored: an orientation tag is not obeyed,
+    /// because a rig's calibration belongs to the sensor's rows and columns.
+    /// </remarks>
+    /// <param name="path">The file.</param>
+    /// <param name="reading">What the file does not say about itself; nothing by default.</param>
+    /// <exception cref="UserErrorException">
+    /// The file is missing, no picture, cut short, above 200 million pixels, or does not hold what <paramref name="reading"/> says.
+    /// </exception>
+    public static Picture Read(string path, PictureReading? reading = null) => PictureFile.Read(path, reading ?? PictureReading.Default);
+
     /// <summary>The same picture with other marks of use; arrays are shared, not copied.</summary>
     /// <param name="usable">Which pixels may be used; nothing where all may.</param>
-    public Picture WithUsable(Mask? usable) => new(Size, grey, SignificantBits, SaturationLevel, colour, usable, CapturedAt, Provenance);
+    public Picture WithUsable(Mask? usable) => With(usable, CapturedAt);
+
+    internal Picture With(Mask? usable, DateTimeOffset? capturedAt) =>
+        new(Size, grey, SignificantBits, SaturationLevel, colour, usable, capturedAt, Provenance, ReadingWarnings);
+
+    /// <summary>A part of the picture as a picture of its own.</summary>
+    /// <param name="region">A region inside the picture.</param>
+    /// <exception cref="UserErrorException">The region is empty or reaches over the picture's edge.</exception>
+    public Picture Cropped(PixelRegion region)
+    {
+        region.Require(Size);
+        T[] Part<T>(ReadOnlySpan<T> all, int perPixel)
+        {
+            var part = new T[(long)region.Width * region.Height * perPixel];
+            for (var v = 0; v < region.Height; v++)
+            {
+                all.Slice(((region.V + v) * Size.Width + region.U) * perPixel, region.Width * perPixel).CopyTo(part.AsSpan(v * region.Width * perPixel));
+            }
+
+            return part;
+        }
+
+        var size = new PictureSize(region.Width, region.Height);
+        return new(
+            size,
+            Part<ushort>(grey, 1),
+            SignificantBits,
+            SaturationLevel,
+            colour is null ? null : Part<ushort>(colour, 3),
+            Usable is null ? null : new Mask(size, Part(Usable.Usable, 1)),
+            CapturedAt,
+            Provenance.Then("crop", region.ToString()),
+            ReadingWarnings);
+    }
 }

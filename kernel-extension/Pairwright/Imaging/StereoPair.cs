@@ -9,12 +9,14 @@ public sealed partial class StereoPair
     /// <param name="left">The reference picture.</param>
     /// <param name="right">The other picture; its size may differ from the left one's.</param>
     /// <param name="rig">The rig that took it, where it is known.</param>
+    /// <param name="name">A short name for lists and sentences, such as the files' shared name; empty when left out.</param>
     /// <exception cref="UserErrorException">A picture's size is not that of its camera.</exception>
-    public StereoPair(Picture left, Picture right, Rig? rig = null)
+    public StereoPair(Picture left, Picture right, Rig? rig = null, string name = "")
     {
         ArgumentNullException.ThrowIfNull(left);
         ArgumentNullException.ThrowIfNull(right);
-        (Left, Right, Rig) = (left, right, rig);
+        ArgumentNullException.ThrowIfNull(name);
+        (Left, Right, Rig, Name) = (left, right, rig, name);
         foreach (var view in rig is null ? [] : Enum.GetValues<View>())
         {
             if (rig![view].Size != this[view].Size)
@@ -33,6 +35,9 @@ public sealed partial class StereoPair
 
     /// <summary>The rig that took the pair, where it is known.</summary>
     public Rig? Rig { get; }
+
+    /// <summary>A short name for lists and sentences, such as the files' shared name; may be empty.</summary>
+    public string Name { get; }
 
     /// <summary>Where the pair came from.</summary>
     public Provenance Provenance => Left.Provenance.With(Right.Provenance);
