@@ -108,6 +108,17 @@ public sealed partial class Picture
     /// <param name="usable">Which pixels may be used; nothing where all may.</param>
     public Picture WithUsable(Mask? usable) => With(usable, CapturedAt);
 
+    /// <summary>The same picture with its levels scaled up to more significant bits.</summary>
+    /// <param name="bits">The bits wanted, at least <see cref="SignificantBits"/> and at most 16.</param>
+    internal Picture WithBits(int bits)
+    {
+        ArgumentOutOfRangeException.ThrowIfLessThan(bits, SignificantBits);
+        var shift = bits - SignificantBits;
+        ushort[] Scaled(ushort[] levels) => shift == 0 ? levels : Array.ConvertAll(levels, level => (ushort)(level << shift));
+        return new(
+            Size, Scaled(grey), bits, SaturationLevel << shift, colour is null ? null : Scaled(colour), Usable, CapturedAt, Provenance, ReadingWarnings);
+    }
+
     internal Picture With(Mask? usable, DateTimeOffset? capturedAt) =>
         new(Size, grey, SignificantBits, SaturationLevel, colour, usable, capturedAt, Provenance, ReadingWarnings);
 

@@ -58,15 +58,22 @@ internal sealed record PictureHeader(
             throw new UserErrorException($"'{path}' says that it is {header.Width} × {header.Height} px, which is no picture; export it again.");
         }
 
-        if (header.Width > int.MaxValue || header.Height > int.MaxValue || header.Width * header.Height > MostPixels)
-        {
-            throw new UserErrorException(
-                $"'{path}' says that it is {header.Width} × {header.Height} px, above the limit of {MostPixels / 1_000_000} million pixels; crop or bin it before reading.");
-        }
-
+        RequireWithinLimit(header.Width, header.Height, path);
         return header.CutShort is { } reason
             ? throw new UserErrorException($"'{path}' is cut short or damaged: {reason}; copy or export it again.")
             : header;
+    }
+
+    /// <summary>Refuses a size above the limit.</summary>
+    /// <exception cref="UserErrorException">It is above the limit.</exception>
+    public static void RequireWithinLimit(long width, long height, string path)
+    {
+        // Each side is looked at first: their product may not fit into 64 bits.
+        if (width > MostPixels || height > MostPixels || width * height > MostPixels)
+        {
+            throw new UserErrorException(
+                $"'{path}' says that it is {width} × {height} px, above the limit of {MostPixels / 1_000_000} million pixels; crop or bin it before reading.");
+        }
     }
 
     private static bool LooksLikeText(ReadOnlySpan<byte> content)

@@ -19,11 +19,7 @@ public sealed partial class StereoPair
         (Left, Right, Rig, Name) = (left, right, rig, name);
         foreach (var view in rig is null ? [] : Enum.GetValues<View>())
         {
-            if (rig![view].Size != this[view].Size)
-            {
-                throw new UserErrorException(
-                    $"The {view.ToString().ToLowerInvariant()} picture is {this[view].Size} px, but the rig's camera takes {rig[view].Size} px; use the rig that took the pictures.");
-            }
+            RequireSize(rig!, view);
         }
     }
 
@@ -44,4 +40,13 @@ public sealed partial class StereoPair
 
     /// <summary>The picture of a view.</summary>
     public Picture this[View view] => view == View.Left ? Left : Right;
+
+    private void RequireSize(Rig rig, View view)
+    {
+        if (rig[view].Size != this[view].Size)
+        {
+            var which = $"{view.ToString().ToLowerInvariant()} picture{(Name.Length == 0 ? "" : $" of '{Name}'")}";
+            throw new UserErrorException($"The {which} is {this[view].Size} px, but the rig's camera takes {rig[view].Size} px; use the rig that took the pictures.");
+        }
+    }
 }
