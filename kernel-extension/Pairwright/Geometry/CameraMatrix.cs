@@ -12,4 +12,12 @@ public readonly record struct CameraMatrix(double FocalU, double FocalV, double 
 
     /// <summary>The inverse of K.</summary>
     public Matrix3x3 Inverse => new(1 / FocalU, 0, -CentreU / FocalU, 0, 1 / FocalV, -CentreV / FocalV, 0, 0, 1);
+
+    /// <summary>The direction (x, y, 1) of an ideal pixel, in the camera's frame.</summary>
+    public Vector3D Direction(IdealPixel pixel) => new((pixel.U - CentreU) / FocalU, (pixel.V - CentreV) / FocalV, 1);
+
+    /// <summary>The ideal pixel of a direction (x, y, 1), in the camera's frame.</summary>
+    public IdealPixel Pixel(double x, double y) => new(FocalU * x + CentreU, FocalV * y + CentreV);
+
+    internal (double X, double Y) Normalise(IdealPixel pixel) => ((pixel.U - CentreU) / FocalU, (pixel.V - CentreV) / FocalV);
 }

@@ -8,6 +8,7 @@ namespace Pairwright.Geometry;
 public sealed class Rig
 {
     private readonly Matrix<double>? covariance;
+    private readonly Lazy<FundamentalMatrix> fundamentalMatrix;
 
     /// <summary>Makes a rig.</summary>
     /// <param name="left">The reference camera.</param>
@@ -38,6 +39,8 @@ public sealed class Rig
         {
             this.covariance = Checked(covariance);
         }
+
+        fundamentalMatrix = new(() => FundamentalMatrix.Of(this));
     }
 
     /// <summary>The reference camera.</summary>
@@ -58,8 +61,65 @@ public sealed class Rig
     /// <summary>The distance between the camera centres, in millimetres.</summary>
     public double BaselineMm => RightFromLeft.Translation.Norm;
 
+    /// <summary>The right camera's centre in the left camera's frame, in millimetres: −Rᵀ·t.</summary>
+    public Vector3D RightCentreInLeft => RightFromLeft.Inverse.Translation;
+
+    /// <summary>F = K_right⁻ᵀ·[t]×·R·K_left⁻¹, normalised: x_rightᵀ · F · x_left = 0 for ideal pixels of one scene point.</summary>
+    public FundamentalMatrix FundamentalMatrix => fundamentalMatrix.Value;
+
+    /// <summary>E = [t]×·R with a translation of length one.</summary>
+    public EssentialMatrix EssentialMatrix => EssentialMatrix.Of(this);
+
+    /// <summary>
+    /// The least depth, in millimetres in the left camera's frame, at which the two views overlap: everything nearer is blind to depth.
+    /// Nothing where they overlap nowhere up to 10,000 baselines.
+    /// </summary>
+    public double? BlindZoneMm => SharedViews.NearestDepth(this);
+
     /// <summary>The camera of a view.</summary>
     public Camera this[View view] => view == View.Left ? Left : Right;
+
+    /// <summary>The ray of a view's ideal pixel, in the left camera's frame.</summary>
+    public Ray Ray(View view, IdealPixel pixel) => view == View.Left
+        ? new(default, Left.Ray(pixel))
+        : new(RightCentreInLeft, RightFromLeft.Rotation.Transpose * Right.Ray(pixel));
+
+    /// <summary>The ray of a view's raw pixel, in the left camera's frame.</summary>
+    /// <exception cref="UserErrorException">The pixel lies outside the lens model's valid field.</exception>
+    public Ray Ray(View view, RawPixel pixel) => Ray(view, this[view].Undistort(pixel));
+
+    /// <summary>The ideal pixels of a match in raw ones.</summary>
+    /// <exception cref="UserErrorException">A pixel lies outside its lens model's valid field.</exception>
+    public IdealMatch Undistort(RawMatch match) => new(Left.Undistort(match.Left), Right.Undistort(match.Right));
+
+    /// <summary>An epipolar line as the lens forms it in the raw picture of the line's view.</summary>
+    /// <param name="line">The line.</param>
+    /// <param name="stepPx">The distance between neighbouring points of the chain, in pixels, above zero.</param>
+    public RawCurve RawCurveOf(EpipolarLine line, double stepPx = 1) => RawCurves.OfLine(this, line, stepPx);
+
+    /// <summary>
+    /// Where in the other view's raw picture the match of a raw pixel may lie: the curve of its ray, from far to near, each point with its
+    /// inverse depth.
+    /// </summary>
+    /// <param name="pixel">The pixel.</param>
+    /// <param name="nearestMm">The least depth Z in the frame of the pixel's camera, in millimetres; down to the camera when left out.</param>
+    /// <param name="farthestMm">The greatest depth, in millimetres; infinity when left out.</param>
+    /// <param name="stepPx">The distance between neighbouring points of the chain, in pixels, above zero.</param>
+    /// <param name="of">The view of the pixel.</param>
+    /// <exception cref="UserErrorException">The pixel lies outside the lens model's valid field, or the depths are not in order.</exception>
+    public RawCurve RawCurveOf(
+        RawPixel pixel, double? nearestMm = null, double? farthestMm = null, double stepPx = 1, View of = View.Left) =>
+        RawCurves.OfPixel(this, pixel, nearestMm ?? 0, farthestMm ?? double.PositiveInfinity, stepPx, of);
+
+    /// <summary>What both cameras see of the plane at one depth.</summary>
+    /// <param name="depthMm">The depth Z in the left camera's frame, in millimetres, above zero.</param>
+    public SharedView SharedViewAt(double depthMm) => SharedViews.At(this, depthMm);
+
+    /// <summary>Tells by cheirality and epipolar distance whether the pictures of a pair are swapped against this rig.</summary>
+    /// <param name="matches">At least one match; the more, the surer.</param>
+    /// <param name="tolerancePx">The Sampson distance up to which a match counts as near its epipolar lines, in pixels.</param>
+    /// <exception cref="UserErrorException">No match is given.</exception>
+    public PairOrderCheck OrderOf(IReadOnlyList<RawMatch> matches, double tolerancePx = 3) => PairOrderCheck.Of(this, matches, tolerancePx);
 
     /// <summary>The standard uncertainty of a parameter by its place in <see cref="RigParameters"/>; NaN where no covariance is known.</summary>
     public double StandardUncertainty(int parameter) => covariance is null ? double.NaN : Math.Sqrt(covariance[parameter, parameter]);
