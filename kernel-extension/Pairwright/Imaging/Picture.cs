@@ -104,6 +104,16 @@ public sealed partial class Picture
     /// </exception>
     public static Picture Read(string path, PictureReading? reading = null) => PictureFile.Read(path, reading ?? PictureReading.Default);
 
+    /// <summary>Writes the picture as a PNG file that <see cref="Read"/> reads back with equal levels and significant bits.</summary>
+    /// <remarks>Colours are written where there are any. Mask, time and a saturation level below the largest are not kept.</remarks>
+    /// <param name="path">The file, replaced only when the new one is whole.</param>
+    /// <exception cref="UserErrorException">The file cannot be written.</exception>
+    public void WritePng(string path)
+    {
+        var content = PictureCodec.EncodeWhole(this);
+        AtomicFile.Write(path, stream => stream.Write(content));
+    }
+
     /// <summary>The same picture with other marks of use; arrays are shared, not copied.</summary>
     /// <param name="usable">Which pixels may be used; nothing where all may.</param>
     public Picture WithUsable(Mask? usable) => With(usable, CapturedAt);

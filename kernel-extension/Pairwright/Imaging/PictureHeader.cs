@@ -10,8 +10,9 @@ namespace Pairwright.Imaging;
 /// <param name="BitsPerSample">The stored bits of one sample.</param>
 /// <param name="SamplesPerPixel">1 for grey, 3 for colours, one more with opacity.</param>
 /// <param name="LargestLevel">The largest level that the file states (netpbm's maxval); nothing where it states none.</param>
-/// <param name="StatedBits">The significant bits that the file states for levels scaled up to its full range (PNG's sBIT chunk); nothing where it states none.</param>
+/// <param name="StatedBits">The significant bits that the file states for levels scaled up to its full range (PNG's sBIT chunk, TIFF's 9 to 15 bits a sample); nothing where it states none.</param>
 /// <param name="IsFloat">Whether the samples are floating-point numbers.</param>
+/// <param name="Unsupported">What the file uses that is not read; nothing where all is.</param>
 /// <param name="CutShort">How one sees that the file is not complete; nothing where it is.</param>
 internal sealed record PictureHeader(
     PictureFormat Format,
@@ -22,6 +23,7 @@ internal sealed record PictureHeader(
     int? LargestLevel = null,
     int? StatedBits = null,
     bool IsFloat = false,
+    string? Unsupported = null,
     string? CutShort = null)
 {
     /// <summary>The largest picture that is read: 200 million pixels, well above the largest camera sensors in common use.</summary>
@@ -59,6 +61,11 @@ internal sealed record PictureHeader(
         }
 
         RequireWithinLimit(header.Width, header.Height, path);
+        if (header.Unsupported is { } unsupported)
+        {
+            throw new UserErrorException($"'{path}' {unsupported}, which is not supported; export it as a PNG or a plain TIFF.");
+        }
+
         return header.CutShort is { } reason
             ? throw new UserErrorException($"'{path}' is cut short or damaged: {reason}; copy or export it again.")
             : header;

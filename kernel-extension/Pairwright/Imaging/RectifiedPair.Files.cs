@@ -2,9 +2,14 @@ using Pairwright.Geometry;
 
 namespace Pairwright.Imaging;
 
-/// <content>Reading pairs that came rectified.</content>
+/// <content>Reading pairs that came rectified, and what may be wrong with a pair.</content>
 public sealed partial class RectifiedPair
 {
+    private IReadOnlyList<string>? warnings;
+
+    /// <summary>As <see cref="StereoPair.Warnings"/>, of the rectified pictures.</summary>
+    public IReadOnlyList<string> Warnings => warnings ??= PairWarnings.Of(Left, Right, StereoPair.DefaultSkewTolerance);
+
     /// <summary>Reads a pair whose rows match already.</summary>
     /// <param name="leftPath">The left picture's file.</param>
     /// <param name="rightPath">The right picture's file.</param>

@@ -16,7 +16,13 @@ public sealed partial class RectifiedPair
     {
         ArgumentNullException.ThrowIfNull(left);
         ArgumentNullException.ThrowIfNull(right);
-        if (left.Size != right.Size || (geometry is not null && geometry.Size != left.Size))
+        geometry ??= rectification?.Geometry;
+        if (left.Size == right.Size && geometry is not null && geometry.Size != left.Size)
+        {
+            throw new UserErrorException($"The rectified pictures are {left.Size} px, but their geometry is for {geometry.Size} px; give the geometry of these pictures.");
+        }
+
+        if (left.Size != right.Size)
         {
             throw new UserErrorException(
                 $"Rectified pictures must have one size, but the left is {left.Size} px and the right {right.Size} px; rectify them together or crop them alike.");
@@ -28,7 +34,7 @@ public sealed partial class RectifiedPair
                 $"The left picture has {left.SignificantBits} significant bits and the right {right.SignificantBits}; take both with the same depth, or state it when reading.");
         }
 
-        (Left, Right, Geometry, Rectification) = (left, right, geometry ?? rectification?.Geometry, rectification);
+        (Left, Right, Geometry, Rectification) = (left, right, geometry, rectification);
     }
 
     /// <summary>The reference picture.</summary>

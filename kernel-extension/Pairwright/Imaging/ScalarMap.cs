@@ -58,4 +58,16 @@ public sealed class ScalarMap
 
     /// <summary>The share of pixels that have a value, 0 to 1.</summary>
     public double ValidShare => values.Length == 0 ? 0 : values.Count(value => !float.IsNaN(value)) / (double)values.Length;
+
+    /// <summary>The values between which the middle of the map lies: two quantiles of the values that there are, for a colour scale that outliers do not spoil.</summary>
+    /// <param name="lowShare">The share of values below the first, 0 to 1.</param>
+    /// <param name="highShare">The share of values below the second, 0 to 1.</param>
+    /// <returns>Both NaN where the map holds no value.</returns>
+    public (double Low, double High) Quantiles(double lowShare = 0.01, double highShare = 0.99)
+    {
+        var sorted = Array.FindAll(values, value => !float.IsNaN(value));
+        Array.Sort(sorted);
+        double At(double share) => sorted.Length == 0 ? double.NaN : sorted[(int)Math.Round(Math.Clamp(share, 0, 1) * (sorted.Length - 1))];
+        return (At(lowShare), At(highShare));
+    }
 }

@@ -8,6 +8,7 @@ internal static class TiffHeader
     private const int WidthTag = 256;
     private const int HeightTag = 257;
     private const int BitsTag = 258;
+    private const int PhotometricTag = 262;
     private const int StripOffsetsTag = 273;
     private const int SamplesTag = 277;
     private const int StripLengthsTag = 279;
@@ -15,6 +16,8 @@ internal static class TiffHeader
     private const int TileLengthsTag = 325;
     private const int SampleFormatTag = 339;
     private const int FloatSamples = 3;
+    private const int WhiteIsZero = 0;
+    private const int FilterMosaic = 32803;
 
     /// <summary>The header, or nothing where the content is no TIFF.</summary>
     public static PictureHeader? Read(ReadOnlySpan<byte> content)
@@ -42,17 +45,17 @@ internal static class TiffHeader
             var tag = Number(content, at, 2, little);
             var valueLength = Number(content, at + 2, 2, little) switch { 1 or 2 or 6 or 7 => 1, 3 or 8 => 2, 4 or 9 or 11 => 4, _ => 8 };
             var values = Number(content, at + 4, wordLength, little);
-            if (tag is not (WidthTag or HeightTag or BitsTag or StripOffsetsTag or SamplesTag or StripLengthsTag or TileOffsetsTag or TileLengthsTag or SampleFormatTag))
-            {
-                continue;
-            }
-
             // Values that do not fit into the entry stand elsewhere.
             var place = at + 4 + wordLength;
             var start = values * valueLength <= wordLength ? place : Number(content, place, wordLength, little);
             if (values < 0 || start < 0 || start + values * valueLength > content.Length)
             {
                 throw new ArgumentOutOfRangeException(nameof(content), "a TIFF entry points past the file");
+            }
+
+            if (tag is not (WidthTag or HeightTag or BitsTag or PhotometricTag or StripOffsetsTag or SamplesTag or StripLengthsTag or TileOffsetsTag or TileLengthsTag or SampleFormatTag))
+            {
+                continue;
             }
 
             var list = new long[values];
@@ -64,14 +67,23 @@ internal static class TiffHeader
             tags[tag] = list;
         }
 
+        // The place of the next directory ends this one; it is there even where no other follows.
+        Number(content, directory + countLength + count * entryLength, wordLength, little);
         long First(int tag, long otherwise) => tags.TryGetValue(tag, out var list) && list.Length > 0 ? list[0] : otherwise;
+        // The decoder brings samples of 9 to 15 bits up to 16, and turns white-is-zero round in 8 bits only.
+        var bits = (int)First(BitsTag, 1);
+        var photometric = First(PhotometricTag, 1);
         var header = new PictureHeader(
             PictureFormat.Tiff,
             First(WidthTag, 0),
             First(HeightTag, 0),
-            (int)First(BitsTag, 1),
+            bits,
             (int)First(SamplesTag, 1),
-            IsFloat: First(SampleFormatTag, 1) == FloatSamples);
+            StatedBits: bits is > 8 and < 16 ? bits : null,
+            IsFloat: First(SampleFormatTag, 1) == FloatSamples,
+            Unsupported: photometric == FilterMosaic ? "holds a camera maker's raw data"
+                : photometric == WhiteIsZero && bits > 8 ? "stores white as zero in more than 8 bits"
+                : null);
 
         var offsets = tags.GetValueOrDefault(StripOffsetsTag) ?? tags.GetValueOrDefault(TileOffsetsTag);
         var lengths = tags.GetValueOrDefault(StripLengthsTag) ?? tags.GetValueOrDefault(TileLengthsTag);
