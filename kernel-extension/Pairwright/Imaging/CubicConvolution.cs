@@ -61,13 +61,14 @@ internal static class CubicConvolution
         for (var i = 0; i < seen.Length; i++)
         {
             var (u, v) = (columns[i], rows[i]);
-            if (!(u >= 0 && v >= 0 && u <= size.Width - 1 && v <= size.Height - 1))
+            if (!size.Contains(u, v))
             {
                 continue;
             }
 
-            var (left, top) = ((int)u, (int)v);
-            var (right, bottom) = (u > left ? left + 1 : left, v > top ? top + 1 : top);
+            // In the outer half pixel the edge repeats.
+            var (left, top) = ((int)Math.Max(u, 0), (int)Math.Max(v, 0));
+            var (right, bottom) = (u > left ? Math.Min(left + 1, size.Width - 1) : left, v > top ? Math.Min(top + 1, size.Height - 1) : top);
             seen[i] = usable is null || (usable[left, top] && usable[right, top] && usable[left, bottom] && usable[right, bottom]);
         }
 

@@ -5,6 +5,23 @@ namespace Pairwright.Imaging;
 /// <content>Making a rectified pair.</content>
 public sealed partial class StereoPair
 {
+    /// <summary>Resamples both pictures so that matching points share a row, by the rectification of the pair's own rig.</summary>
+    /// <remarks>As <see cref="Rectify(Rectification)"/>.</remarks>
+    /// <param name="fit">What of the two pictures to keep.</param>
+    /// <param name="size">The size of the rectified pictures; chosen to keep the scale when left out.</param>
+    /// <exception cref="UserErrorException">The pair has no rig, or the rig cannot be rectified.</exception>
+    public RectifiedPair Rectify(RectificationFit fit = RectificationFit.Cropped, PictureSize? size = null) =>
+        Rectify(Rectification.Of(
+            Rig ?? throw new UserErrorException(
+                $"The pair{Quoted} has no rig to rectify it by; read it with its rig, or say with AsRectified that its rows match already."),
+            fit,
+            size));
+
+    /// <summary>The same pictures, taken as rectified already.</summary>
+    /// <param name="geometry">Focal length, baseline and offset; nothing where they are not known, so that there is disparity but no depth.</param>
+    /// <exception cref="UserErrorException">The pictures' sizes differ, or are not that of the geometry.</exception>
+    public RectifiedPair AsRectified(RectifiedGeometry? geometry = null) => new(Left, Right, geometry);
+
     /// <summary>Resamples both pictures so that matching points share a row.</summary>
     /// <remarks>
     /// Levels between pixels are looked up by cubic convolution (Keys 1981) at positions that are not rounded. Pixels that no camera saw, or that
@@ -29,25 +46,15 @@ public sealed partial class StereoPair
     {
         var picture = this[view].WithBits(bits);
         var size = rectification.Geometry.Size;
-        var columns = new float[size.Area];
-        var rows = new float[size.Area];
-        Parallel.For(0, size.Height, v =>
-        {
-            for (var u = 0; u < size.Width; u++)
-            {
-                var raw = rectification.RawFromRectified(view, new(u, v));
-                (columns[v * size.Width + u], rows[v * size.Width + u]) = ((float)raw.U, (float)raw.V);
-            }
-        });
-
+        var map = rectification.SamplingMapOf(view);
         var largest = (1 << bits) - 1;
-        var seen = CubicConvolution.Seen(picture.Size, picture.Usable, columns, rows);
+        var seen = CubicConvolution.Seen(picture.Size, picture.Usable, map.Columns.Span, map.Rows.Span);
         return new(
             size,
-            CubicConvolution.Resample(picture.GreyMemory, picture.Size, 1, largest, columns, rows, size.Width),
+            CubicConvolution.Resample(picture.GreyMemory, picture.Size, 1, largest, map.Columns, map.Rows, size.Width),
             bits,
             picture.SaturationLevel,
-            picture.HasColour ? CubicConvolution.Resample(picture.Colour.ToArray(), picture.Size, 3, largest, columns, rows, size.Width) : null,
+            picture.HasColour ? CubicConvolution.Resample(picture.Colour.ToArray(), picture.Size, 3, largest, map.Columns, map.Rows, size.Width) : null,
             Array.TrueForAll(seen, pixel => pixel) ? null : new Mask(size, seen),
             picture.CapturedAt,
             picture.Provenance.With(rectification.Rig.Provenance).Then("rectify", $"{view.ToString().ToLowerInvariant()}, {size} px"),

@@ -41,11 +41,13 @@ public sealed partial class StereoPair
     /// <summary>The picture of a view.</summary>
     public Picture this[View view] => view == View.Left ? Left : Right;
 
+    private string Quoted => Name.Length == 0 ? "" : $" '{Name}'";
+
     private void RequireSize(Rig rig, View view)
     {
         if (rig[view].Size != this[view].Size)
         {
-            var which = $"{view.ToString().ToLowerInvariant()} picture{(Name.Length == 0 ? "" : $" of '{Name}'")}";
+            var which = $"{view.ToString().ToLowerInvariant()} picture{(Name.Length == 0 ? "" : $" of{Quoted}")}";
             throw new UserErrorException($"The {which} is {this[view].Size} px, but the rig's camera takes {rig[view].Size} px; use the rig that took the pictures.");
         }
     }
