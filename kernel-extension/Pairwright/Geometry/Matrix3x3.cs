@@ -1,3 +1,4 @@
+using System.Globalization;
 using MathNet.Numerics.LinearAlgebra;
 
 namespace Pairwright.Geometry;
@@ -82,4 +83,9 @@ public readonly record struct Matrix3x3(
 
     /// <summary>The multiple.</summary>
     public static Matrix3x3 operator *(double factor, Matrix3x3 m) => FromRows(factor * m.Row1, factor * m.Row2, factor * m.Row3);
+
+    // Stated because the text that a record writes by itself asks for Transpose, whose text asks for its own, without end.
+    /// <summary>The rows, to six digits.</summary>
+    public override string ToString() => string.Create(
+        CultureInfo.InvariantCulture, $"[{M11:G6}, {M12:G6}, {M13:G6}; {M21:G6}, {M22:G6}, {M23:G6}; {M31:G6}, {M32:G6}, {M33:G6}]");
 }

@@ -19,4 +19,8 @@ public readonly record struct Pose(Matrix3x3 Rotation, Vector3D Translation)
 
     /// <summary>First this change of frame, then another.</summary>
     public Pose Then(Pose next) => new(next.Rotation * Rotation, next.Transform(Translation));
+
+    // Stated because the text that a record writes by itself asks for Inverse, whose text asks for its own, without end.
+    /// <summary>The rotation and the translation, to six digits.</summary>
+    public override string ToString() => $"R = {Rotation}, t = {Translation} mm";
 }

@@ -1,3 +1,5 @@
+using System.Globalization;
+
 namespace Pairwright.Geometry;
 
 /// <summary>A point or a direction in space. Points are in millimetres, in the frame that the holder names.</summary>
@@ -32,4 +34,8 @@ public readonly record struct Vector3D(double X, double Y, double Z)
 
     /// <summary>The fraction.</summary>
     public static Vector3D operator /(Vector3D vector, double divisor) => new(vector.X / divisor, vector.Y / divisor, vector.Z / divisor);
+
+    // Stated because the text that a record writes by itself asks for Normalized, whose text asks for its own Normalized, without end.
+    /// <summary>The three numbers, to six digits.</summary>
+    public override string ToString() => string.Create(CultureInfo.InvariantCulture, $"({X:G6}, {Y:G6}, {Z:G6})");
 }
