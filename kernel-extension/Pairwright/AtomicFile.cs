@@ -28,7 +28,10 @@ public static class AtomicFile
         }
         finally
         {
-            File.Delete(beside);
+            if (File.Exists(beside))
+            {
+                File.Delete(beside);
+            }
         }
     }
 

@@ -212,7 +212,7 @@ public sealed class Rig
             for (var j = 0; j <= i; j++)
             {
                 var bound = 1.000001 * Math.Sqrt(covariance[i, i] * covariance[j, j]);
-                if (!(Math.Abs(covariance[i, j]) <= bound) || Math.Abs(covariance[i, j] - covariance[j, i]) > 1e-9 * bound)
+                if (covariance[i, i] < 0 || !(Math.Abs(covariance[i, j]) <= bound) || Math.Abs(covariance[i, j] - covariance[j, i]) > 1e-9 * bound)
                 {
                     throw new UserErrorException(
                         $"The rig's covariance is not one at '{RigParameters.Names[i]}' and '{RigParameters.Names[j]}' (NaN, not symmetric, or correlated by more than one); correct the rig file.");

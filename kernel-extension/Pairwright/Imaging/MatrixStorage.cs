@@ -76,8 +76,11 @@ internal sealed class MatrixStorage
         return Geometry.Rotation.IsRotation(rotation) ? rotation : throw Wrong(name, "is not a rotation (its transpose is not its inverse, or it mirrors)");
     }
 
-    /// <summary>A vector of three numbers, not all zero unless it is a rotation's.</summary>
-    public Vector3D Vector(string name)
+    /// <summary>A translation, not zero.</summary>
+    public Vector3D Translation(string name) =>
+        Vector(name) is var vector && vector.Norm > 0 ? vector : throw Wrong(name, "is zero, but two cameras at one place see no depth");
+
+    private Vector3D Vector(string name)
     {
         var v = matrices[name].Values;
         return v.Length == 3 ? new(v[0], v[1], v[2]) : throw Wrong(name, $"has {v.Length} numbers instead of 3");

@@ -106,7 +106,7 @@ public static class RigFile
         var left = cameras.Camera(names.LeftCameraMatrix, names.LeftDistortion, leftSize);
         var right = cameras.Camera(names.RightCameraMatrix, names.RightDistortion, rightSize ?? leftSize);
         var provenance = posePath is null ? cameras.Provenance : cameras.Provenance.With(pose.Provenance);
-        return new(left, right, new(pose.Rotation(names.Rotation), unit * pose.Vector(names.Translation)), provenance: provenance);
+        return new(left, right, new(pose.Rotation(names.Rotation), unit * pose.Translation(names.Translation)), provenance: provenance);
     }
 
     private static Camera ReadCamera(YamlEntry entry)
@@ -181,6 +181,11 @@ public static class RigFile
         for (var row = 0; row < places.Length; row++)
         {
             var numbers = rows[row].Numbers(row + 1);
+            if (numbers[row] < 0)
+            {
+                throw rows[row].Wrong($"ends with the variance {Exact(numbers[row])}, which is below zero; correct it or calibrate again");
+            }
+
             for (var column = 0; column <= row; column++)
             {
                 var value = numbers[column] * (Scale(places[row], unit) * Scale(places[column], unit));

@@ -30,6 +30,11 @@ internal sealed class YamlEntry
         {
             throw new UserErrorException($"'{file}' is not valid YAML at line {fault.Start.Line}, column {fault.Start.Column}; correct the file.", fault);
         }
+        catch (InvalidOperationException fault)
+        {
+            // The parser's own word for a bracket that is never closed; it tells no place.
+            throw new UserErrorException($"'{file}' is not valid YAML (a bracket may be open); correct the file.", fault);
+        }
     }
 
     /// <summary>Demands a mapping with no other names than these: a misspelt name must not pass for one left out.</summary>
