@@ -109,6 +109,9 @@ public sealed record Camera
     /// <summary>Hashes the parts.</summary>
     public override int GetHashCode() => HashCode.Combine(Matrix, Distortion, Size);
 
+    /// <summary>Size, linear part and lens.</summary>
+    public override string ToString() => $"{Size} px, {Matrix}, {Distortion}";
+
     /// <summary>The border of the picture in ideal pixels, in order from the top-left corner; where the lens model ends before the picture, its end.</summary>
     internal ImmutableArray<IdealPixel> Border => border.Value;
 

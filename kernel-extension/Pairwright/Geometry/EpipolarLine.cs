@@ -19,7 +19,7 @@ public sealed record EpipolarLine
         if (!(length > 0) || !double.IsFinite(length) || !double.IsFinite(c))
         {
             throw new UserErrorException(
-                $"The coefficients ({a}, {b}, {c}) are no line in the {view.Name()} picture: the point is the epipole or not a number; choose another point.");
+                $"The coefficients ({a}, {b}, {c}) are no line in the {view.Name()} view; give finite ones of which the first two are not both zero.");
         }
 
         (A, B, C, View) = (a / length, b / length, c / length, view);

@@ -74,6 +74,9 @@ public sealed class EssentialMatrix
         return new(counts[0].Pose, counts[0].Count, matches.Count);
     }
 
+    /// <summary>The matrix.</summary>
+    public override string ToString() => $"E = {Matrix}";
+
     internal static EssentialMatrix Of(Rig rig) =>
         new(Matrix3x3.Skew(rig.RightFromLeft.Translation.Normalized) * rig.RightFromLeft.Rotation, [1, 1, 0]);
 }

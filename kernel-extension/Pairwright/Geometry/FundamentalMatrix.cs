@@ -92,11 +92,11 @@ public sealed class FundamentalMatrix
 
     /// <summary>The line in the right view on which the match of a left pixel lies: F · x_left.</summary>
     /// <exception cref="UserErrorException">The pixel is the epipole.</exception>
-    public EpipolarLine LineInRight(IdealPixel left) => Line(Matrix * Homogeneous(left), View.Right);
+    public EpipolarLine LineInRight(IdealPixel left) => Line(Matrix, left, View.Right);
 
     /// <summary>The line in the left view on which the match of a right pixel lies: Fᵀ · x_right.</summary>
     /// <exception cref="UserErrorException">The pixel is the epipole.</exception>
-    public EpipolarLine LineInLeft(IdealPixel right) => Line(Matrix.Transpose * Homogeneous(right), View.Left);
+    public EpipolarLine LineInLeft(IdealPixel right) => Line(Matrix.Transpose, right, View.Left);
 
     /// <summary>The line in the other view on which the match of a view's pixel lies.</summary>
     /// <exception cref="UserErrorException">The pixel is the epipole.</exception>
@@ -141,6 +141,9 @@ public sealed class FundamentalMatrix
     public EssentialMatrix ToEssential(CameraMatrix left, CameraMatrix right) =>
         EssentialMatrix.From(right.Matrix.Transpose * Matrix * left.Matrix);
 
+    /// <summary>The matrix and its epipoles.</summary>
+    public override string ToString() => $"F = {Matrix}, epipoles {EpipoleInLeft} and {EpipoleInRight}";
+
     // The matrix is of rank two by construction and the epipoles are known better than a decomposition could tell.
     internal static FundamentalMatrix Of(Rig rig)
     {
@@ -159,7 +162,16 @@ public sealed class FundamentalMatrix
 
     internal static Vector3D Homogeneous(IdealPixel pixel) => new(pixel.U, pixel.V, 1);
 
-    private static EpipolarLine Line(Vector3D line, View view) => new(line.X, line.Y, line.Z, view);
+    // At the epipole rounding leaves a line of some direction: sums that cancel to their last digits are zero.
+    private static EpipolarLine Line(Matrix3x3 matrix, IdealPixel pixel, View view)
+    {
+        var line = matrix * Homogeneous(pixel);
+        var terms = (matrix.Row1.Norm + matrix.Row2.Norm) * Homogeneous(pixel).Norm;
+        return Math.Abs(line.X) + Math.Abs(line.Y) > 1e-15 * terms
+            ? new(line.X, line.Y, line.Z, view)
+            : throw new UserErrorException(
+                $"Pixel ({pixel.U:0.###}, {pixel.V:0.###}) is the epipole of the {view.Other().Name()} view, whose match may lie anywhere in the {view.Name()} one; choose another pixel.");
+    }
 
     private static Matrix3x3 Normalised(Matrix3x3 matrix)
     {

@@ -22,6 +22,11 @@ public sealed record RectifiedGeometry
                 $"A rectified pair needs a focal length (given {focalPixels} px) and a baseline (given {baselineMm} mm) above zero and a finite offset and centre; correct them.");
         }
 
+        if (leftFromRectified is { } turn && !Rotation.IsRotation(turn))
+        {
+            throw new UserErrorException("The rotation from the rectified to the left camera's frame is not a rotation; correct it.");
+        }
+
         (FocalPixels, BaselineMm, OffsetPixels, CentreU, CentreV, Size) = (focalPixels, baselineMm, offsetPixels, centreU, centreV, size);
         LeftFromRectified = leftFromRectified ?? Matrix3x3.Identity;
     }
@@ -56,6 +61,10 @@ public sealed record RectifiedGeometry
 
     /// <summary>dZ/dd = −Z² / (f·b), in millimetres per pixel, at a depth.</summary>
     public double DepthPerDisparity(double depthMm) => -depthMm * depthMm / (FocalPixels * BaselineMm);
+
+    /// <summary>Focal length, baseline, offset and size.</summary>
+    public override string ToString() =>
+        $"{Size} px, focal length {FocalPixels:0.###} px, baseline {BaselineMm:0.###} mm, offset {OffsetPixels:0.###} px, centre ({CentreU:0.###}, {CentreV:0.###}) px";
 
     /// <summary>The point in the rectified left frame, in millimetres; NaN where the disparity gives no depth.</summary>
     public Vector3D PointInRectifiedFrame(RectifiedPixel left, double disparity)

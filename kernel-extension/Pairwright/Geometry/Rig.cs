@@ -34,7 +34,9 @@ public sealed class Rig
             throw new UserErrorException("The rig's translation must be finite and not zero: two cameras at one place see no depth; correct the rig file.");
         }
 
-        (Left, Right, RightFromLeft, Provenance) = (left, right, rightFromLeft, provenance ?? Provenance.None);
+        // A rotation written with few digits would leave rows apart and lines off by as much; one exact to rounding is kept bit for bit.
+        var rotation = Rotation.Deviation(rightFromLeft.Rotation) < 1e-14 ? rightFromLeft.Rotation : Rotation.Nearest(rightFromLeft.Rotation);
+        (Left, Right, RightFromLeft, Provenance) = (left, right, rightFromLeft with { Rotation = rotation }, provenance ?? Provenance.None);
         if (covariance is not null)
         {
             this.covariance = Checked(covariance);
@@ -123,6 +125,9 @@ public sealed class Rig
 
     /// <summary>The standard uncertainty of a parameter by its place in <see cref="RigParameters"/>; NaN where no covariance is known.</summary>
     public double StandardUncertainty(int parameter) => covariance is null ? double.NaN : Math.Sqrt(covariance[parameter, parameter]);
+
+    /// <summary>Both cameras and the pose between them.</summary>
+    public override string ToString() => $"left: {Left}; right: {Right}; right from left: {RightFromLeft}; baseline {BaselineMm:0.###} mm";
 
     /// <summary>The rig that results when a small change is added to the parameters, without covariance.</summary>
     /// <param name="change">Thirty numbers in the order and units of <see cref="RigParameters"/>.</param>
@@ -218,6 +223,17 @@ public sealed class Rig
                         $"The rig's covariance is not one at '{RigParameters.Names[i]}' and '{RigParameters.Names[j]}' (NaN, not symmetric, or correlated by more than one); correct the rig file.");
                 }
             }
+        }
+
+        var sigma = covariance.Diagonal().Map(Math.Sqrt);
+        var correlation = Matrix<double>.Build.Dense(
+            RigParameters.Count,
+            RigParameters.Count,
+            (i, j) => sigma[i] > 0 && sigma[j] > 0 ? (covariance[i, j] + covariance[j, i]) / (2 * sigma[i] * sigma[j]) : 0);
+        if (correlation.Evd(Symmetricity.Symmetric).EigenValues.Min(value => value.Real) < -1e-6)
+        {
+            throw new UserErrorException(
+                "The rig's covariance is not one: some combination of parameters would have a negative variance; correct the rig file or write more digits.");
         }
 
         return covariance.Clone();

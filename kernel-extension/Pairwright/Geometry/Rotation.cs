@@ -55,12 +55,27 @@ public static class Rotation
         return axis.Dot(axisTimesSine) < 0 ? -angle * axis : angle * axis;
     }
 
+    /// <summary>The rotation nearest, in the Frobenius norm, to a matrix that is nearly one, for instance read from a file with few digits.</summary>
+    /// <remarks>The orthogonal polar factor U·Vᵀ of the singular value decomposition (Schönemann 1966).</remarks>
+    /// <exception cref="ArgumentException">The matrix is not a rotation by <see cref="IsRotation"/>.</exception>
+    public static Matrix3x3 Nearest(Matrix3x3 matrix)
+    {
+        if (!IsRotation(matrix))
+        {
+            throw new ArgumentException("The matrix is not a rotation: its transpose is not its inverse, or its determinant is not one.", nameof(matrix));
+        }
+
+        var svd = matrix.ToMatrix().Svd();
+        return Matrix3x3.From(svd.U * svd.VT);
+    }
+
     /// <summary>Whether a matrix is a rotation to one part in a million: orthogonal, with determinant one.</summary>
-    public static bool IsRotation(Matrix3x3 matrix)
+    public static bool IsRotation(Matrix3x3 matrix) => Deviation(matrix) < 1e-6 && matrix.Determinant > 0;
+
+    internal static double Deviation(Matrix3x3 matrix)
     {
         var product = matrix * matrix.Transpose;
-        var deviation = Matrix3x3.FromRows(
-            product.Row1 - new Vector3D(1, 0, 0), product.Row2 - new Vector3D(0, 1, 0), product.Row3 - new Vector3D(0, 0, 1));
-        return deviation.FrobeniusNorm < 1e-6 && matrix.Determinant > 0;
+        return Matrix3x3.FromRows(
+            product.Row1 - new Vector3D(1, 0, 0), product.Row2 - new Vector3D(0, 1, 0), product.Row3 - new Vector3D(0, 0, 1)).FrobeniusNorm;
     }
 }

@@ -104,6 +104,9 @@ public sealed class TriangulatedPoint
         return sum;
     }
 
+    /// <summary>The position, and whether it lies behind a camera.</summary>
+    public override string ToString() => $"{Position} mm{(InFrontOfBoth ? "" : ", behind a camera")}";
+
     internal static TriangulatedPoint From(Rig rig, IdealMatch match, Func<Rig, IdealMatch, Vector3D> method)
     {
         ArgumentNullException.ThrowIfNull(rig);
