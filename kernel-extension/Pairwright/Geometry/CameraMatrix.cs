@@ -14,7 +14,7 @@ public readonly record struct CameraMatrix(double FocalU, double FocalV, double 
     public Matrix3x3 Inverse => new(1 / FocalU, 0, -CentreU / FocalU, 0, 1 / FocalV, -CentreV / FocalV, 0, 0, 1);
 
     /// <summary>Focal lengths and principal point.</summary>
-    public override string ToString() => $"focal length ({FocalU:0.###}, {FocalV:0.###}) px, centre ({CentreU:0.###}, {CentreV:0.###}) px";
+    public override string ToString() => FormattableString.Invariant($"focal length ({FocalU:0.###}, {FocalV:0.###}) px, centre ({CentreU:0.###}, {CentreV:0.###}) px");
 
     /// <summary>The direction (x, y, 1) of an ideal pixel, in the camera's frame.</summary>
     public Vector3D Direction(IdealPixel pixel) => new((pixel.U - CentreU) / FocalU, (pixel.V - CentreV) / FocalV, 1);

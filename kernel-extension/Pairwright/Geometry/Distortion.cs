@@ -73,7 +73,7 @@ public sealed record Distortion
     {
         (string Name, double Value)[] terms =
             [("k1", K1), ("k2", K2), ("p1", P1), ("p2", P2), ("k3", K3), ("k4", K4), ("k5", K5), ("k6", K6)];
-        return IsNone ? "no distortion" : string.Join(", ", terms.Where(term => term.Value != 0).Select(term => $"{term.Name} {term.Value:G6}"));
+        return IsNone ? "no distortion" : string.Join(", ", terms.Where(term => term.Value != 0).Select(term => FormattableString.Invariant($"{term.Name} {term.Value:G6}")));
     }
 
     /// <summary>The distorted direction of an undistorted one (x, y, 1).</summary>

@@ -57,7 +57,7 @@ public sealed record EpipolarLine
 
     /// <summary>The equation, for people.</summary>
     public override string ToString() =>
-        $"{A:0.######}·u {Signed(B, "0.######")}·v {Signed(C, "0.###")} = 0 ({View.Name()} view, px)";
+        FormattableString.Invariant($"{A:0.######}·u {Signed(B, "0.######")}·v {Signed(C, "0.###")} = 0 ({View.Name()} view, px)");
 
     // Liang & Barsky (1984): the line's parameter is narrowed by one border after another.
     internal (IdealPixel From, IdealPixel To)? ClippedTo(double left, double top, double right, double bottom)

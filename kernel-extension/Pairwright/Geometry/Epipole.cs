@@ -35,6 +35,6 @@ public readonly record struct Epipole
 
     /// <summary>The pixel or the direction, for people.</summary>
     public override string ToString() => Pixel is { } pixel
-        ? $"({pixel.U:0.##}, {pixel.V:0.##}) px in the {View.Name()} view"
-        : $"at infinity in the {View.Name()} view, direction ({Direction.U:0.####}, {Direction.V:0.####})";
+        ? FormattableString.Invariant($"({pixel.U:0.##}, {pixel.V:0.##}) px in the {View.Name()} view")
+        : FormattableString.Invariant($"at infinity in the {View.Name()} view, direction ({Direction.U:0.####}, {Direction.V:0.####})");
 }

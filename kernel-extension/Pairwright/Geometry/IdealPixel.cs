@@ -7,5 +7,5 @@ namespace Pairwright.Geometry;
 public readonly record struct IdealPixel(double U, double V)
 {
     /// <summary>The position, in pixels.</summary>
-    public override string ToString() => $"({U:0.###}, {V:0.###}) px";
+    public override string ToString() => FormattableString.Invariant($"({U:0.###}, {V:0.###}) px");
 }

@@ -50,9 +50,6 @@ public readonly record struct Matrix3x3(
         }
     }
 
-    /// <summary>The rows.</summary>
-    public override string ToString() => $"[{Row1}, {Row2}, {Row3}]";
-
     /// <summary>A matrix from its rows.</summary>
     public static Matrix3x3 FromRows(Vector3D first, Vector3D second, Vector3D third) =>
         new(first.X, first.Y, first.Z, second.X, second.Y, second.Z, third.X, third.Y, third.Z);

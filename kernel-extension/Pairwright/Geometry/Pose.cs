@@ -17,10 +17,6 @@ public readonly record struct Pose(Matrix3x3 Rotation, Vector3D Translation)
     /// <summary>The point in the frame that this pose leads to, in millimetres.</summary>
     public Vector3D Transform(Vector3D point) => Rotation * point + Translation;
 
-    /// <summary>The rotation vector in degrees and the translation in millimetres.</summary>
-    public override string ToString() =>
-        $"rotation {180 / Math.PI * Geometry.Rotation.ToVector(Rotation)}°, translation {Translation} mm";
-
     /// <summary>First this change of frame, then another.</summary>
     public Pose Then(Pose next) => new(next.Rotation * Rotation, next.Transform(Translation));
 

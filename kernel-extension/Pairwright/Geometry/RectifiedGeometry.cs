@@ -64,7 +64,7 @@ public sealed record RectifiedGeometry
 
     /// <summary>Focal length, baseline, offset and size.</summary>
     public override string ToString() =>
-        $"{Size} px, focal length {FocalPixels:0.###} px, baseline {BaselineMm:0.###} mm, offset {OffsetPixels:0.###} px, centre ({CentreU:0.###}, {CentreV:0.###}) px";
+        FormattableString.Invariant($"{Size} px, focal length {FocalPixels:0.###} px, baseline {BaselineMm:0.###} mm, offset {OffsetPixels:0.###} px, centre ({CentreU:0.###}, {CentreV:0.###}) px");
 
     /// <summary>The point in the rectified left frame, in millimetres; NaN where the disparity gives no depth.</summary>
     public Vector3D PointInRectifiedFrame(RectifiedPixel left, double disparity)

@@ -127,7 +127,7 @@ public sealed class Rig
     public double StandardUncertainty(int parameter) => covariance is null ? double.NaN : Math.Sqrt(covariance[parameter, parameter]);
 
     /// <summary>Both cameras and the pose between them.</summary>
-    public override string ToString() => $"left: {Left}; right: {Right}; right from left: {RightFromLeft}; baseline {BaselineMm:0.###} mm";
+    public override string ToString() => FormattableString.Invariant($"left: {Left}; right: {Right}; right from left: {RightFromLeft}; baseline {BaselineMm:0.###} mm");
 
     /// <summary>The rig that results when a small change is added to the parameters, without covariance.</summary>
     /// <param name="change">Thirty numbers in the order and units of <see cref="RigParameters"/>.</param>
@@ -217,10 +217,10 @@ public sealed class Rig
             for (var j = 0; j <= i; j++)
             {
                 var bound = 1.000001 * Math.Sqrt(covariance[i, i] * covariance[j, j]);
-                if (covariance[i, i] < 0 || !(Math.Abs(covariance[i, j]) <= bound) || Math.Abs(covariance[i, j] - covariance[j, i]) > 1e-9 * bound)
+                if (!(covariance[i, i] >= 0) || !(Math.Abs(covariance[i, j]) <= bound) || Math.Abs(covariance[i, j] - covariance[j, i]) > 1e-9 * bound)
                 {
                     throw new UserErrorException(
-                        $"The rig's covariance is not one at '{RigParameters.Names[i]}' and '{RigParameters.Names[j]}' (NaN, not symmetric, or correlated by more than one); correct the rig file.");
+                        $"The rig's covariance is not one at '{RigParameters.Names[i]}' and '{RigParameters.Names[j]}' (NaN, a negative variance, not symmetric, or correlated by more than one); correct the rig file.");
                 }
             }
         }

@@ -5,7 +5,7 @@ namespace Pairwright.Geometry;
 /// <summary>Finds what both cameras of a rig see.</summary>
 internal static class SharedViews
 {
-    private const int Rows = 400;
+    private const int Rows = 100;
 
     // A direction flatter than this against the plane is taken as this flat: it meets the plane far outside any shared area.
     private const double FlattestSlope = 1e-3;
@@ -18,33 +18,22 @@ internal static class SharedViews
         }
 
         var left = OnPlane(rig, View.Left, depthMm)!;
-        var (leftArea, area) = (0.0, 0.0);
-        List<Vector3D> rising = [], falling = [];
-        var height = (left.Bottom - left.Top) / Rows;
         var right = OnPlane(rig, View.Right, depthMm);
-        for (var row = 0; row < Rows; row++)
-        {
-            var y = left.Top + (row + 0.5) * height;
-            var span = left.Span(y);
-            leftArea += Math.Max(0, span.High - span.Low) * height;
-            var other = right?.Span(y) ?? (1, 0);
-            var (low, high) = (Math.Max(span.Low, other.Low), Math.Min(span.High, other.High));
-            if (low < high)
-            {
-                area += (high - low) * height;
-                rising.Add(new(low, y, depthMm));
-                falling.Add(new(high, y, depthMm));
-            }
-        }
-
-        rising.Reverse();
-        return new(depthMm, [.. falling, .. rising], area, area / leftArea);
+        var shared = right is null ? [] : Shared(left, right);
+        return new(
+            depthMm,
+            [
+                .. shared.Select(row => new Vector3D(row.High, row.Y, depthMm)),
+                .. Enumerable.Reverse(shared).Select(row => new Vector3D(row.Low, row.Y, depthMm)),
+            ],
+            Area(shared),
+            Area(shared) / Area(Shared(left, left)));
     }
 
     public static double? NearestDepth(Rig rig)
     {
-        // From a hundredth of a baseline up in steps of five percent, then halved: the overlap grows steadily from where it begins.
-        const double growth = 1.05;
+        // From a hundredth of a baseline up in steps of a fifth, then halved: the overlap grows steadily from where it begins.
+        const double growth = 1.2;
         var (blind, depth) = (0.0, 0.01 * rig.BaselineMm);
         while (!Overlaps(rig, depth))
         {
@@ -55,7 +44,7 @@ internal static class SharedViews
             }
         }
 
-        for (var halving = 0; halving < 40 && blind > 0; halving++)
+        for (var halving = 0; halving < 30 && blind > 0; halving++)
         {
             var middle = (blind + depth) / 2;
             (blind, depth) = Overlaps(rig, middle) ? (blind, middle) : (middle, depth);
@@ -64,27 +53,40 @@ internal static class SharedViews
         return depth;
     }
 
-    private static bool Overlaps(Rig rig, double depthMm)
-    {
-        if (OnPlane(rig, View.Right, depthMm) is not { } right)
-        {
-            return false;
-        }
+    private static bool Overlaps(Rig rig, double depthMm) =>
+        OnPlane(rig, View.Right, depthMm) is { } right && Shared(OnPlane(rig, View.Left, depthMm)!, right).Count > 0;
 
-        var left = OnPlane(rig, View.Left, depthMm)!;
-        var (top, bottom) = (Math.Max(left.Top, right.Top), Math.Min(left.Bottom, right.Bottom));
-        const int rows = 64;
-        for (var row = 0; row < rows && top < bottom; row++)
+    // Row by row what two outlines share, from the first to the last height that both reach; neighbouring rows bound a strip.
+    private static List<(double Y, double Low, double High)> Shared(PlaneOutline a, PlaneOutline b)
+    {
+        // At its very top and bottom an outline may be a point.
+        const double drawnIn = 1e-6;
+        var (top, bottom) = (Math.Max(a.Top, b.Top), Math.Min(a.Bottom, b.Bottom));
+        var rows = new List<(double, double, double)>();
+        for (var row = 0; row <= Rows && top < bottom; row++)
         {
-            var y = top + (row + 0.5) / rows * (bottom - top);
-            var (a, b) = (left.Span(y), right.Span(y));
-            if (Math.Max(a.Low, b.Low) < Math.Min(a.High, b.High))
+            var y = top + Math.Clamp(row / (double)Rows, drawnIn, 1 - drawnIn) * (bottom - top);
+            var ((low, high), (otherLow, otherHigh)) = (a.Span(y), b.Span(y));
+            (low, high) = (Math.Max(low, otherLow), Math.Min(high, otherHigh));
+            if (low < high)
             {
-                return true;
+                rows.Add((y, low, high));
             }
         }
 
-        return false;
+        return rows;
+    }
+
+    private static double Area(List<(double Y, double Low, double High)> rows)
+    {
+        var area = 0.0;
+        for (var i = 1; i < rows.Count; i++)
+        {
+            var (above, below) = (rows[i - 1], rows[i]);
+            area += (below.Y - above.Y) * (above.High - above.Low + below.High - below.Low) / 2;
+        }
+
+        return area;
     }
 
     // Nothing where the plane lies behind the camera.

@@ -14,9 +14,6 @@ public readonly record struct Vector3D(double X, double Y, double Z)
     /// <summary>The same direction with length one.</summary>
     public Vector3D Normalized => this / Norm;
 
-    /// <summary>The three numbers.</summary>
-    public override string ToString() => $"({X:G6}, {Y:G6}, {Z:G6})";
-
     /// <summary>The scalar product.</summary>
     public double Dot(Vector3D other) => X * other.X + Y * other.Y + Z * other.Z;
 

@@ -9,7 +9,7 @@ public sealed class RectificationTests
     public void Rows_of_exact_matches_are_equal_to_1e_9_px_and_disparity_is_that_of_the_depth()
     {
         var worst = 0.0;
-        foreach (var (rig, points) in RandomRigs.WithPoints(seed: 71, count: 300))
+        foreach (var (rig, points) in RandomRigs.WithPoints(seed: 71, count: 60))
         {
             foreach (var fit in Enum.GetValues<RectificationFit>())
             {
@@ -44,7 +44,7 @@ public sealed class RectificationTests
     [Fact]
     public void A_rectified_pixel_goes_back_to_the_pixel_it_came_from()
     {
-        foreach (var (rig, points) in RandomRigs.WithPoints(seed: 73, count: 100))
+        foreach (var (rig, points) in RandomRigs.WithPoints(seed: 73, count: 40))
         {
             var rectification = Rectification.Of(rig);
             foreach (var raw in points.Select(point => Matches.RawOf(rig, point)))
@@ -141,7 +141,7 @@ public sealed class RectificationTests
     [Fact]
     public void Cropped_leaves_no_empty_pixel_in_either_picture()
     {
-        foreach (var (rig, _) in RandomRigs.WithPoints(seed: 75, count: 12, pointsPerRig: 1))
+        foreach (var (rig, _) in RandomRigs.WithPoints(seed: 75, count: 4, pointsPerRig: 1))
         {
             foreach (var size in new PictureSize?[] { null, new(400, 300) })
             {
@@ -150,11 +150,8 @@ public sealed class RectificationTests
                 foreach (var view in Enum.GetValues<View>())
                 {
                     var map = rectification.SamplingMapOf(view);
-                    foreach (var (u, v) in map.Columns.ToArray().Zip(map.Rows.ToArray()))
-                    {
-                        Assert.InRange(u, 0, rig[view].Size.Width - 1);
-                        Assert.InRange(v, 0, rig[view].Size.Height - 1);
-                    }
+                    Assert.Equal(0, OutOf(map.Columns, rig[view].Size.Width - 1));
+                    Assert.Equal(0, OutOf(map.Rows, rig[view].Size.Height - 1));
                 }
             }
         }
@@ -163,7 +160,7 @@ public sealed class RectificationTests
     [Fact]
     public void Everything_keeps_every_raw_pixel_of_both_pictures()
     {
-        foreach (var (rig, _) in RandomRigs.WithPoints(seed: 76, count: 40, pointsPerRig: 1))
+        foreach (var (rig, _) in RandomRigs.WithPoints(seed: 76, count: 20, pointsPerRig: 1))
         {
             // Lenses whose model ends inside the picture cannot keep what lies beyond.
             if (rig.Left.TryUndistort(new(0, 0)) is null || rig.Right.TryUndistort(new(0, 0)) is null)
@@ -232,7 +229,7 @@ public sealed class RectificationTests
                 }
             }
 
-            Assert.True(seen > 1000);
+            Assert.True(seen > 100, $"{view}: {seen}");
         }
     }
 
@@ -242,6 +239,17 @@ public sealed class RectificationTests
         var geometry = Rectification.Of(Plain(new(-60, 0, 0))).Geometry;
         Assert.Throws<UserErrorException>(() => new Rectification(Plain(new(-61, 0, 0)), geometry));
         Assert.Throws<UserErrorException>(() => new Rectification(Plain(new(-60, 1, 0)), geometry));
+    }
+
+    private static int OutOf(ReadOnlyMemory<float> positions, float last)
+    {
+        var outside = 0;
+        foreach (var position in positions.Span)
+        {
+            outside += position >= 0 && position <= last ? 0 : 1;
+        }
+
+        return outside;
     }
 
     private static Rig Plain(Vector3D translation)
