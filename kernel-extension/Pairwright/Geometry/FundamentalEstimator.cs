@@ -110,13 +110,19 @@ internal static class FundamentalEstimator
 
                 (best, least) = (candidate, loss);
                 var consistent = Consistent(candidate.Matrix, all, tolerancePx);
-                var allGood = Math.Pow(consistent.Length / (double)all.Length, SampleSize);
-                needed = Math.Min(MostSamples, allGood < 1 ? Math.Log(1 - confidence) / Math.Log(1 - allGood) : 0);
+                needed = SamplesFor(consistent.Length / (double)all.Length, confidence);
                 estimate = consistent.Length >= SampleSize ? EightPointsOf(consistent) : null;
             }
         }
 
         return (best, drawn);
+    }
+
+    // So many that with the given probability one of them is free of outliers.
+    private static double SamplesFor(double consistentShare, double confidence)
+    {
+        var spoilt = 1 - Math.Pow(consistentShare, SampleSize);
+        return spoilt < 1 ? Math.Min(MostSamples, Math.Log(1 - confidence) / Math.Log(spoilt)) : MostSamples;
     }
 
     private static double Loss(Matrix3x3 matrix, IdealMatch[] matches, double tolerancePx)

@@ -3,12 +3,24 @@ using System.Collections.Immutable;
 namespace Pairwright.Geometry;
 
 /// <summary>Finds what both cameras of a rig see.</summary>
-internal static class SharedViews
+internal sealed class SharedViews
 {
     private const int Rows = 100;
 
     // A direction flatter than this against the plane is taken as this flat: it meets the plane far outside any shared area.
     private const double FlattestSlope = 1e-3;
+
+    private readonly Vector3D centre;
+    private readonly Vector3D[] left;
+    private readonly Vector3D[] right;
+
+    // Directions along the border of each picture, in the left camera's frame.
+    private SharedViews(Rig rig)
+    {
+        centre = rig.RightCentreInLeft;
+        left = [.. rig.Left.Border.Select(pixel => rig.Ray(View.Left, pixel).Direction)];
+        right = [.. rig.Right.Border.Select(pixel => rig.Ray(View.Right, pixel).Direction)];
+    }
 
     public static SharedView At(Rig rig, double depthMm)
     {
@@ -17,9 +29,9 @@ internal static class SharedViews
             throw new UserErrorException($"A depth of {depthMm} mm is not in front of the camera; give a depth above zero in millimetres.");
         }
 
-        var left = OnPlane(rig, View.Left, depthMm)!;
-        var right = OnPlane(rig, View.Right, depthMm);
-        var shared = right is null ? [] : Shared(left, right);
+        var views = new SharedViews(rig);
+        var left = OnPlane(default, views.left, depthMm)!;
+        var shared = views.SharedAt(depthMm);
         return new(
             depthMm,
             [
@@ -34,8 +46,9 @@ internal static class SharedViews
     {
         // From a hundredth of a baseline up in steps of a fifth, then halved: the overlap grows steadily from where it begins.
         const double growth = 1.2;
+        var views = new SharedViews(rig);
         var (blind, depth) = (0.0, 0.01 * rig.BaselineMm);
-        while (!Overlaps(rig, depth))
+        while (views.SharedAt(depth).Count == 0)
         {
             (blind, depth) = (depth, growth * depth);
             if (depth > 1e4 * rig.BaselineMm)
@@ -47,14 +60,14 @@ internal static class SharedViews
         for (var halving = 0; halving < 30 && blind > 0; halving++)
         {
             var middle = (blind + depth) / 2;
-            (blind, depth) = Overlaps(rig, middle) ? (blind, middle) : (middle, depth);
+            (blind, depth) = views.SharedAt(middle).Count > 0 ? (blind, middle) : (middle, depth);
         }
 
         return depth;
     }
 
-    private static bool Overlaps(Rig rig, double depthMm) =>
-        OnPlane(rig, View.Right, depthMm) is { } right && Shared(OnPlane(rig, View.Left, depthMm)!, right).Count > 0;
+    private List<(double Y, double Low, double High)> SharedAt(double depthMm) =>
+        OnPlane(centre, right, depthMm) is { } seenByRight ? Shared(OnPlane(default, left, depthMm)!, seenByRight) : [];
 
     // Row by row what two outlines share, from the first to the last height that both reach; neighbouring rows bound a strip.
     private static List<(double Y, double Low, double High)> Shared(PlaneOutline a, PlaneOutline b)
@@ -90,16 +103,11 @@ internal static class SharedViews
     }
 
     // Nothing where the plane lies behind the camera.
-    private static PlaneOutline? OnPlane(Rig rig, View view, double depthMm)
-    {
-        var centre = view == View.Left ? default : rig.RightCentreInLeft;
-        return depthMm > centre.Z
-            ? new(rig[view].Border.Select(pixel =>
-            {
-                var direction = rig.Ray(view, pixel).Direction;
-                var scale = (depthMm - centre.Z) / Math.Max(direction.Z, FlattestSlope);
-                return (centre.X + scale * direction.X, centre.Y + scale * direction.Y);
-            }))
-            : null;
-    }
+    private static PlaneOutline? OnPlane(Vector3D centre, Vector3D[] directions, double depthMm) => depthMm > centre.Z
+        ? new(directions.Select(direction =>
+        {
+            var scale = (depthMm - centre.Z) / Math.Max(direction.Z, FlattestSlope);
+            return (centre.X + scale * direction.X, centre.Y + scale * direction.Y);
+        }))
+        : null;
 }

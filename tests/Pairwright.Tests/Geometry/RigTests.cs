@@ -31,14 +31,15 @@ public sealed class RigTests
     [Fact]
     public void Every_point_inside_the_shared_view_is_seen_by_both_cameras()
     {
-        foreach (var (rig, points) in RandomRigs.WithPoints(seed: 91, count: 50, pointsPerRig: 3))
+        foreach (var (rig, points) in RandomRigs.WithPoints(seed: 91, count: 30, pointsPerRig: 3))
         {
+            var blind = rig.BlindZoneMm;
             foreach (var point in points)
             {
                 var view = rig.SharedViewAt(point.Z);
                 Assert.False(view.IsEmpty);
                 Assert.InRange(point.X, view.Outline.Min(p => p.X) - 0.01 * point.Z, view.Outline.Max(p => p.X) + 0.01 * point.Z);
-                Assert.True(rig.BlindZoneMm <= point.Z);
+                Assert.True(blind <= point.Z);
 
                 // The border, drawn in by one part in two hundred towards a point that both see, is seen by both.
                 foreach (var edge in view.Outline.Where((_, i) => i % 50 == 0))
