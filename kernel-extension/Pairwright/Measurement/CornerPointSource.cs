@@ -20,7 +20,7 @@ internal sealed class CornerPointSource(Rig rig, IReadOnlyList<RawPixel> lefts, 
     {
         var (l, r) = (lefts[index], rights[index]);
         var sum = 0 * Matrix3x3.Identity;
-        foreach (var (du, dv) in new[] { (StepPx, 0), (0, StepPx) })
+        foreach (var (du, dv) in new (double, double)[] { (StepPx, 0), (0, StepPx) })
         {
             Add(Meet(new(l.U + du, l.V + dv), r) - Meet(new(l.U - du, l.V - dv), r));
             Add(Meet(l, new(r.U + du, r.V + dv)) - Meet(l, new(r.U - du, r.V - dv)));

@@ -33,19 +33,19 @@ public sealed class Flatness
         // The extremes are taken at the same two points under every rig, so that they do not jump from point to point.
         var (highest, lowest) = (IndexOf(heights, heights.Max()), IndexOf(heights, heights.Min()));
         var (high, low) = (Nearest(points, sample, highest), Nearest(points, sample, lowest));
-        var rms = Rms(heights);
+        var rms = RootMeanSquare(heights);
         var varied = points.Varied.Select(heights, Heights);
         var rmsSigma = rms == 0 ? 0 : Math.Sqrt(heights.Zip(sigmas, (height, sigma) => height * height * sigma * sigma).Sum()) / (points.Count * rms);
         var peakVariants = varied.Select(heights[highest] - heights[lowest], h => h[high] - h[low]);
         return new(
-            varied.Select(rms, Rms).ToMeasured(value => value, rmsSigma, "mm"),
+            varied.Select(rms, RootMeanSquare).ToMeasured(value => value, rmsSigma, "mm"),
             peakVariants.ToMeasured(value => value, Math.Sqrt(sigmas[highest] * sigmas[highest] + sigmas[lowest] * sigmas[lowest]), "mm"));
     }
 
     /// <summary>From figures that were worked out already.</summary>
     internal static Flatness Of(MeasuredValue rms, MeasuredValue peakToValley) => new(rms, peakToValley);
 
-    private static double Rms(double[] heights) => Math.Sqrt(heights.Sum(height => height * height) / heights.Length);
+    private static double RootMeanSquare(double[] heights) => Math.Sqrt(heights.Sum(height => height * height) / heights.Length);
 
     private static int IndexOf(double[] values, double value) => Array.IndexOf(values, value);
 

@@ -163,7 +163,7 @@ public sealed class MeasuredPoints
 
     internal double MeanPitchMm => Count == 0 ? 0 : indices.Average(source.PitchMm);
 
-    internal PointBlocks Blocks() => PointBlocks.Of([.. indices.Select(source.Place)], CorrelationLengthPx);
+    internal PointBlocks Blocks() => PointBlocks.Group([.. indices.Select(source.Place)], CorrelationLengthPx);
 
     private (int[] Sample, RigVariants<Vector3D[]> Variants) VarySample()
     {

@@ -29,7 +29,7 @@ internal sealed class PointBlocks
     /// <summary>Groups points.</summary>
     /// <param name="places">Where each point lies in the picture, in pixels.</param>
     /// <param name="correlationLength">How far errors of neighbouring pixels are correlated, in pixels; 0 makes every point its own block.</param>
-    public static PointBlocks Of(IReadOnlyList<(double U, double V)> places, double correlationLength)
+    public static PointBlocks Group(IReadOnlyList<(double U, double V)> places, double correlationLength)
     {
         if (correlationLength <= 0)
         {

@@ -55,12 +55,12 @@ public sealed class QuadraticFit
     /// sagitta is c₃·w²/4.
     /// </remarks>
     public MeasuredValue SagittaAcross(double? widthMm = null) =>
-        Derive(widthMm, 0, (surface, w, _) => surface.Coefficients[3] * w * w / 4);
+        Derive(widthMm, null, (surface, w, _) => surface.Coefficients[3] * w * w / 4);
 
     /// <summary>The signed sagitta along, as <see cref="SagittaAcross"/> with c₅ and the length.</summary>
     /// <param name="lengthMm">The length, above zero; the extent of the points when left out.</param>
     public MeasuredValue SagittaAlong(double? lengthMm = null) =>
-        Derive(0, lengthMm, (surface, _, l) => surface.Coefficients[5] * l * l / 4);
+        Derive(null, lengthMm, (surface, _, l) => surface.Coefficients[5] * l * l / 4);
 
     /// <summary>
     /// The twist: the signed distance of the corner at +u, +v of the fitted surface from the plane through its other three corners, above zero towards the camera.
@@ -138,9 +138,9 @@ public sealed class QuadraticFit
             throw new UserErrorException("The region is nearly as long as it is wide, so its short side is not clear; state the direction across the grain.");
         }
 
-        return new Vector3D(axes[0, 1], axes[1, 1], axes[2, 1]) is { X: < 0 } or { X: 0, Y: < 0 } turned
-            ? -turned
-            : new Vector3D(axes[0, 1], axes[1, 1], axes[2, 1]);
+        // An axis has no sense of its own: to the right, so that the same plank gives the same signs.
+        var side = new Vector3D(axes[0, 1], axes[1, 1], axes[2, 1]);
+        return side.X < 0 ? -side : side;
     }
 
     private static double FormRms(Surface surface, double width, double length) => Math.Sqrt(Form(surface, width, length).Average(h => h * h));
@@ -169,7 +169,7 @@ public sealed class QuadraticFit
     // Value under every rig; random part by the slopes of the quantity in the coefficients and in an extent that was measured.
     private MeasuredValue Derive(double? widthMm, double? lengthMm, Func<Surface, double, double, double> quantity)
     {
-        if (widthMm is < 0 or double.NaN || lengthMm is < 0 or double.NaN)
+        if (widthMm is <= 0 or double.NaN || lengthMm is <= 0 or double.NaN)
         {
             throw new UserErrorException($"A width or length of {widthMm ?? lengthMm} mm is not one; give a length above zero, or leave it out to take the points' extent.");
         }

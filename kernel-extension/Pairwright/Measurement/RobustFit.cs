@@ -107,7 +107,7 @@ internal sealed class RobustFit
                 standard[i] = Residual(i) / sigmas[i];
             }
 
-            scale = fixedScale ?? 1.4826 * Array.ConvertAll(standard, Math.Abs).MedianInplace();
+            scale = fixedScale ?? 1.4826 * ArrayStatistics.MedianInplace(Array.ConvertAll(standard, Math.Abs));
             if (scale * sigmas[0] <= ResolutionMm)
             {
                 return scale;
