@@ -1,3 +1,4 @@
+using System.Runtime.InteropServices;
 using OpenCvSharp;
 using Pairwright.Geometry;
 
@@ -31,6 +32,6 @@ internal static class BayerMosaic
         using var source = Mat.FromPixelData(size.Height, size.Width, MatType.CV_16UC1, mosaic);
         using var colours = new Mat();
         Cv2.CvtColor(source, colours, code);
-        return colours.AsSpan<Vec3w>().ToArray().SelectMany(pixel => new[] { pixel.Item0, pixel.Item1, pixel.Item2 }).ToArray();
+        return MemoryMarshal.Cast<Vec3w, ushort>(colours.AsSpan<Vec3w>()).ToArray();
     }
 }

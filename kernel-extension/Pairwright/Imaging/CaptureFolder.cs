@@ -6,9 +6,9 @@ namespace Pairwright.Imaging;
 /// <remarks>
 /// <para>
 /// A file belongs to a view when its name holds the word <c>left</c> or <c>right</c> (in any case), at its beginning or end or set off by
-/// a character that is no letter: <c>left_03.png</c>/<c>right_03.png</c>, <c>03_left.tif</c>/<c>03_right.tif</c>,
-/// <c>left01.jpg</c>/<c>right01.jpg</c>. Two files are a pair when their names are equal but for that word. A folder with the subfolders
-/// <c>left</c> and <c>right</c> pairs files of equal names, the ending aside.
+/// a character that is no letter, or as a capitalised part: <c>left_03.png</c>/<c>right_03.png</c>, <c>03_left.tif</c>/<c>03_right.tif</c>,
+/// <c>left01.jpg</c>/<c>right01.jpg</c>, <c>cameraLeft7.png</c>/<c>cameraRight7.png</c>. Two files are a pair when their names are equal but for that word. A folder with the subfolders
+/// <c>left</c> and <c>right</c> pairs files of equal names, the ending and such a word aside.
 /// </para>
 /// <para>
 /// Where the folder holds a <c>captures.csv</c> with the columns <c>left,right,left_time,right_time</c> (the times, in ISO 8601 with an

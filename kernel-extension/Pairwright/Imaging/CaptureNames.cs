@@ -15,7 +15,7 @@ internal static partial class CaptureNames
         var files = new List<(string Key, View View, string Path)>();
         foreach (var (name, view) in Subfolders(folder))
         {
-            files.AddRange(Pictures(Path.Combine(folder, name)).Select(path => (Path.GetFileNameWithoutExtension(path), view, path)));
+            files.AddRange(Pictures(Path.Combine(folder, name)).Select(path => (KeyInSubfolder(path, view), view, path)));
         }
 
         foreach (var path in Pictures(folder))
@@ -92,6 +92,13 @@ internal static partial class CaptureNames
 
     private static int CompareNumbers(string x, string y) => x.Length != y.Length ? x.Length - y.Length : string.CompareOrdinal(x, y);
 
+    // left/left01.png and right/right01.png say the view twice.
+    private static string KeyInSubfolder(string path, View view)
+    {
+        var stem = Path.GetFileNameWithoutExtension(path);
+        return Parse(stem) is var (said, _, key) && said == view ? key : stem;
+    }
+
     private static string NameOf(string left, string right) => CaptureFolder.SharedName(left, right);
 
     private static IEnumerable<(string Name, View View)> Subfolders(string folder)
@@ -113,7 +120,8 @@ internal static partial class CaptureNames
     private static IEnumerable<string> Pictures(string folder) =>
         Directory.EnumerateFiles(folder).Where(path => Endings.Contains(Path.GetExtension(path))).Order(StringComparer.Ordinal);
 
-    [GeneratedRegex("(?<![A-Za-z])(left|right)(?![A-Za-z])", RegexOptions.IgnoreCase | RegexOptions.CultureInvariant)]
+    // A word of its own in any case, or a capitalised part of a name such as cameraLeft.
+    [GeneratedRegex("(?<![A-Za-z])(?i:left|right)(?![A-Za-z])|(?<=[a-z])(?:Left|Right)(?![a-z])", RegexOptions.CultureInvariant)]
     private static partial Regex ViewWord();
 
     [GeneratedRegex("[0-9]+|[^0-9]+", RegexOptions.CultureInvariant)]

@@ -53,7 +53,7 @@ public static class ColourScale
         for (var i = 0; i < Steps; i++)
         {
             var share = i / (Steps - 1.0);
-            var chroma = 0.06 + 0.075 * Math.Sin(Math.PI * share);
+            var chroma = 0.045 + 0.05 * Math.Sin(Math.PI * share);
             (table[3 * i], table[3 * i + 1], table[3 * i + 2]) = FromOklab(0.22 + 0.74 * share, chroma, 20 + 185 * share);
         }
 

@@ -72,4 +72,7 @@ public sealed class Mask
 
         return From(Size, (u, v) => this[u, v] && other[u, v]);
     }
+
+    /// <summary>The size and the share of usable pixels in a line.</summary>
+    public override string ToString() => string.Create(System.Globalization.CultureInfo.InvariantCulture, $"Mask of {Size} px, {Share:0.0%} usable");
 }

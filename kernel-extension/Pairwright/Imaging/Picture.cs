@@ -20,7 +20,7 @@ public sealed partial class Picture
     /// <param name="capturedAt">When it was taken, where that is known.</param>
     /// <param name="provenance">Where it came from.</param>
     /// <param name="warnings">What its maker noticed and a user should know, one sentence each.</param>
-    /// <exception cref="UserErrorException">The size, bits or mask do not fit.</exception>
+    /// <exception cref="UserErrorException">The size, bits, levels, saturation level or mask do not fit.</exception>
     public Picture(
         PictureSize size,
         ushort[] grey,
@@ -43,13 +43,21 @@ public sealed partial class Picture
             throw new UserErrorException($"A picture of {significantBits} significant bits is not supported; give 8 to 16.");
         }
 
+        var largest = (1 << significantBits) - 1;
+        int most = Math.Max(grey.Max(), colour?.Max() ?? 0);
+        if (most > largest || saturationLevel < 1 || saturationLevel > largest)
+        {
+            throw new UserErrorException(
+                $"A level of {Math.Max(most, saturationLevel ?? 0)} does not fit a picture of {significantBits} significant bits (1 to {largest}); state the bits that the camera delivers.");
+        }
+
         if (usable is not null && usable.Size != size)
         {
             throw new UserErrorException($"A mask of {usable.Size} px does not fit a picture of {size} px; give a mask of the picture's own size.");
         }
 
         (Size, this.grey, SignificantBits, this.colour, Usable, CapturedAt) = (size, grey, significantBits, colour, usable, capturedAt);
-        SaturationLevel = saturationLevel ?? ((1 << significantBits) - 1);
+        SaturationLevel = saturationLevel ?? largest;
         Provenance = provenance ?? Provenance.None;
         ReadingWarnings = [.. warnings ?? []];
     }
@@ -161,4 +169,7 @@ public sealed partial class Picture
             Provenance.Then("crop", region.ToString()),
             ReadingWarnings);
     }
+
+    /// <summary>Size, bits and kind in a line.</summary>
+    public override string ToString() => $"{Size} px, {SignificantBits} bits, {(HasColour ? "colour" : "grey")}";
 }

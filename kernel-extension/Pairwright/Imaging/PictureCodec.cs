@@ -7,7 +7,8 @@ namespace Pairwright.Imaging;
 /// <summary>Pictures for showing, as PNG bytes that are the same on every run.</summary>
 public static class PictureCodec
 {
-    private static readonly ImageEncodingParam[] Smallest = [new(ImwriteFlags.PngCompression, 9)];
+    // Higher levels take several times as long and save little on camera pictures.
+    private static readonly ImageEncodingParam[] Compression = [new(ImwriteFlags.PngCompression, 4)];
 
     /// <summary>Encodes 8-bit grey levels.</summary>
     /// <param name="size">The size.</param>
@@ -90,7 +91,7 @@ public static class PictureCodec
 
         OpenCvLibrary.Require();
         using var mat = Mat.FromPixelData(picture.Size.Height, picture.Size.Width, MatType.CV_16UC(channels), samples);
-        var content = mat.ImEncode(".png", Smallest);
+        var content = mat.ImEncode(".png", Compression);
         if (spare == 0)
         {
             return content;
@@ -116,6 +117,6 @@ public static class PictureCodec
         OpenCvLibrary.Require();
         using var mat = new Mat(size.Height, size.Width, MatType.CV_8UC(channels));
         samples.CopyTo(mat.AsSpan<byte>());
-        return mat.ImEncode(".png", Smallest);
+        return mat.ImEncode(".png", Compression);
     }
 }

@@ -1,3 +1,4 @@
+using System.Globalization;
 using OpenCvSharp;
 
 namespace Pairwright.Imaging;
@@ -41,7 +42,7 @@ internal static class PictureFile
             channels == 3 ? samples : null,
             null,
             reading.CapturedAt,
-            Provenance.OfContent(path, content),
+            Provenance.OfContent(path, content) is var origin && Settings(reading) is { Length: > 0 } settings ? origin.Then("read", settings) : origin,
             warnings);
         return Restricted(whole, reading, path);
     }
@@ -63,6 +64,16 @@ internal static class PictureFile
 
         return whole.With(usable, reading.CapturedAt);
     }
+
+    // What the caller told, for the provenance; a mask is told by its share, because it has no name.
+    private static string Settings(PictureReading reading) => string.Join(", ", new[]
+    {
+        reading.SignificantBits is { } bits ? $"{bits} significant bits" : "",
+        reading.SaturationLevel is { } level ? $"saturated at {level}" : "",
+        reading.Bayer is { } pattern ? $"mosaic {pattern.ToString().ToUpperInvariant()}" : "",
+        reading.Region is { } region ? region.ToString() : "",
+        reading.Mask is { } mask ? string.Create(CultureInfo.InvariantCulture, $"mask of {mask.Share:0.####}") : "",
+    }.Where(part => part.Length > 0));
 
     /// <summary>All bytes of a file.</summary>
     /// <exception cref="UserErrorException">It is missing, cannot be read, or is too large.</exception>

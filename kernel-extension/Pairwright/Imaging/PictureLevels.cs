@@ -16,6 +16,11 @@ internal static class PictureLevels
 
         // A file that says how far its levels were scaled up is taken at its word, whatever the caller states.
         var stored = header.BitsPerSample <= 8 ? 8 : 16;
+        if (reading.SignificantBits > stored)
+        {
+            throw new UserErrorException($"{reading.SignificantBits} significant bits were stated for '{path}', but it stores {stored} bits a sample; correct the reading or export it with 16 bits.");
+        }
+
         int? said = null;
         if (header.StatedBits is { } scaled && stored == 16)
         {

@@ -54,4 +54,9 @@ public sealed partial class RectifiedPair
 
     /// <summary>Where the pair came from.</summary>
     public Provenance Provenance => Left.Provenance.With(Right.Provenance);
+
+    /// <summary>Size and geometry in a line.</summary>
+    public override string ToString() => string.Create(
+        System.Globalization.CultureInfo.InvariantCulture,
+        $"Rectified pair: {Left}; {(Geometry is { } g ? $"f = {g.FocalPixels:0.###} px, b = {g.BaselineMm:0.###} mm, offset {g.OffsetPixels:0.###} px" : "geometry not known")}");
 }

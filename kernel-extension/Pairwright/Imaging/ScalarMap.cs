@@ -70,4 +70,7 @@ public sealed class ScalarMap
         double At(double share) => sorted.Length == 0 ? double.NaN : sorted[(int)Math.Round(Math.Clamp(share, 0, 1) * (sorted.Length - 1))];
         return (At(lowShare), At(highShare));
     }
+
+    /// <summary>The size and the share of pixels with a value in a line.</summary>
+    public override string ToString() => string.Create(System.Globalization.CultureInfo.InvariantCulture, $"Map of {Size} px, {ValidShare:0.0%} with a value");
 }

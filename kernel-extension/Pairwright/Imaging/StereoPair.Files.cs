@@ -22,8 +22,11 @@ public sealed partial class StereoPair
     /// <param name="reading">What the left files do not say about themselves, and the right ones where <paramref name="rightReading"/> is left out.</param>
     /// <param name="rightReading">What the right files do not say about themselves.</param>
     /// <exception cref="UserErrorException">The folder is missing or holds no pair, or a file cannot be read.</exception>
-    public static IReadOnlyList<StereoPair> ReadFolder(string folder, Rig? rig = null, PictureReading? reading = null, PictureReading? rightReading = null) =>
-        [.. CaptureFolder.Open(folder).Captures.Select(capture => capture.Read(rig, reading, rightReading))];
+    public static CaptureSeries ReadFolder(string folder, Rig? rig = null, PictureReading? reading = null, PictureReading? rightReading = null)
+    {
+        var found = CaptureFolder.Open(folder);
+        return new(found, [.. found.Captures.Select(capture => capture.Read(rig, reading, rightReading))]);
+    }
 
     /// <summary>Reads a pair from one picture that holds the left view in its left half and the right view in its right half.</summary>
     /// <param name="path">The file; its width is even.</param>

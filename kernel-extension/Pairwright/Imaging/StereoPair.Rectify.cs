@@ -24,7 +24,7 @@ public sealed partial class StereoPair
 
     /// <summary>Resamples both pictures so that matching points share a row.</summary>
     /// <remarks>
-    /// Levels between pixels are looked up by cubic convolution (Keys 1981) at positions that are not rounded. Pixels that no camera saw, or that
+    /// Levels between pixels are looked up by cubic B-splines (Unser 1999) at positions that are not rounded. Pixels that no camera saw, or that
     /// a region or mask forbids, are marked in each picture's <see cref="Picture.Usable"/>. Where the two pictures have different significant
     /// bits, the levels of the one with fewer are scaled up.
     /// </remarks>
@@ -48,16 +48,16 @@ public sealed partial class StereoPair
         var size = rectification.Geometry.Size;
         var map = rectification.SamplingMapOf(view);
         var largest = (1 << bits) - 1;
-        var seen = CubicConvolution.Seen(picture.Size, picture.Usable, map.Columns.Span, map.Rows.Span);
+        var seen = Resampling.Seen(picture.Size, picture.Usable, map.Columns.Span, map.Rows.Span);
         return new(
             size,
-            CubicConvolution.Resample(picture.GreyMemory, picture.Size, 1, largest, map.Columns, map.Rows, size.Width),
+            Resampling.Levels(picture.GreyMemory, picture.Size, 1, largest, map.Columns, map.Rows, size.Width),
             bits,
             picture.SaturationLevel,
-            picture.HasColour ? CubicConvolution.Resample(picture.Colour.ToArray(), picture.Size, 3, largest, map.Columns, map.Rows, size.Width) : null,
+            picture.HasColour ? Resampling.Levels(picture.Colour.ToArray(), picture.Size, 3, largest, map.Columns, map.Rows, size.Width) : null,
             Array.TrueForAll(seen, pixel => pixel) ? null : new Mask(size, seen),
             picture.CapturedAt,
-            picture.Provenance.With(rectification.Rig.Provenance).Then("rectify", $"{view.ToString().ToLowerInvariant()}, {size} px"),
+            picture.Provenance.With(rectification.Rig.Provenance).Then("rectify", $"{view.ToString().ToLowerInvariant()}, {rectification.Fit.ToString().ToLowerInvariant()}, {size} px"),
             picture.ReadingWarnings);
     }
 }

@@ -41,6 +41,9 @@ public sealed partial class StereoPair
     /// <summary>The picture of a view.</summary>
     public Picture this[View view] => view == View.Left ? Left : Right;
 
+    /// <summary>The name and both pictures in a line.</summary>
+    public override string ToString() => $"Stereo pair{Quoted}: left {Left}; right {Right}; {(Rig is null ? "no rig" : "with rig")}";
+
     private string Quoted => Name.Length == 0 ? "" : $" '{Name}'";
 
     private void RequireSize(Rig rig, View view)

@@ -13,6 +13,8 @@ public class Pairs_are_found_by_name
     [InlineData("belt-left-7.png", "belt-right-7.png", "belt_7")]
     [InlineData("plank.LEFT.tif", "plank.RIGHT.png", "plank")]
     [InlineData("left/a.png", "right/a.png", "a")]
+    [InlineData("left/left02.png", "right/right02.png", "02")]
+    [InlineData("cameraLeft7.png", "cameraRight7.png", "camera_7")]
     [InlineData("LEFT/a.png", "Right/a.pgm", "a")]
     public void Two_names_that_differ_in_left_and_right_alone_are_a_pair(string left, string right, string name)
     {
@@ -92,6 +94,22 @@ public class Pairs_are_found_by_name
     }
 
     [Fact]
+    public void A_series_tells_what_it_left_out_and_finds_pairs_by_name()
+    {
+        using var folder = new TestFolder();
+        foreach (var name in new[] { "left_a.png", "right_a.png", "left_b.png" })
+        {
+            Patterns.Picture(10, 8, seed: 1).WritePng(folder.Path(name));
+        }
+
+        var series = StereoPair.ReadFolder(folder.Root);
+
+        Assert.Contains("left_b.png", Assert.Single(series.Warnings, warning => warning.Contains("no partner")));
+        Assert.Same(series[0], series["a"]);
+        Assert.Contains("'z'", Assert.Throws<UserErrorException>(() => series["z"]).Message);
+    }
+
+    [Fact]
     public void The_halves_of_a_side_by_side_picture_are_a_pair()
     {
         using var folder = new TestFolder();
@@ -132,6 +150,21 @@ public class Pairs_are_found_by_name
         Assert.Equal(TimeSpan.FromMilliseconds(12.5), pair.Skew);
         Assert.Contains(pair.Warnings, warning => warning.Contains("12.5 ms") && warning.Contains("left") && warning.Contains("tolerance of 1 ms"));
         Assert.DoesNotContain(pair.WarningsAt(TimeSpan.FromMilliseconds(13)), warning => warning.Contains("ms"));
+    }
+
+    [Theory]
+    [InlineData("2026-03-05T07:15:30Z", 0)]
+    [InlineData("2026-03-05T09:45:30.5+02:30", 500)]
+    [InlineData("2026-03-05T07:15:30.1234567Z", 123.4567)]
+    [InlineData("", null)]
+    public void Times_with_and_without_fractions_are_read(string time, double? milliseconds)
+    {
+        using var folder = Folder("a.png", "b.png");
+        folder.Write("captures.csv", $"left,right,left_time,right_time\na.png,b.png,{time},\n");
+
+        var read = Assert.Single(CaptureFolder.Open(folder.Root).Captures).LeftTime;
+
+        Assert.Equal(milliseconds, (read - new DateTimeOffset(2026, 3, 5, 7, 15, 30, TimeSpan.Zero))?.TotalMilliseconds);
     }
 
     [Theory]

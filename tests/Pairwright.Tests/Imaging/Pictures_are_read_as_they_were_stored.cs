@@ -204,6 +204,15 @@ public class Pictures_are_read_as_they_were_stored
         Assert.Contains("5000", fault.Message);
     }
 
+    [Fact]
+    public void More_bits_than_the_file_stores_are_refused()
+    {
+        using var folder = new TestFolder();
+        Patterns.Picture(4, 4).WritePng(folder.Path("eight.png"));
+
+        Assert.Contains("eight.png", Assert.Throws<UserErrorException>(() => Picture.Read(folder.Path("eight.png"), new() { SignificantBits = 12 })).Message);
+    }
+
     // A mosaic of a plain colour has to give that colour everywhere, whichever corner the pattern begins with.
     [Theory]
     [InlineData(BayerPattern.Rggb, "RGGB")]
@@ -265,6 +274,27 @@ public class Pictures_are_read_as_they_were_stored
         var path = folder.Write("abc.pgm", "P2\n1 1\n255\n7\n");
 
         Assert.Equal(Provenance.OfFile(path), Picture.Read(path).Provenance);
+    }
+
+    [Fact]
+    public void What_the_caller_told_stands_in_the_provenance()
+    {
+        using var folder = new TestFolder();
+        var path = Sixteen(folder, [1, 2, 3, 4]);
+
+        Assert.Equal("sixteen.png → read (12 significant bits, saturated at 4000)", Picture.Read(path, new() { SignificantBits = 12, SaturationLevel = 4000 }).Provenance.ToString());
+    }
+
+    [Theory]
+    [InlineData(8, 256, null)]
+    [InlineData(10, 1024, null)]
+    [InlineData(10, 7, 1024)]
+    [InlineData(10, 7, 0)]
+    [InlineData(7, 7, null)]
+    [InlineData(17, 7, null)]
+    public void Levels_that_do_not_fit_the_bits_are_refused(int bits, int level, int? saturation)
+    {
+        Assert.Throws<UserErrorException>(() => new Picture(new(1, 1), [(ushort)level], bits, saturation));
     }
 
     private static string Sixteen(TestFolder folder, ushort[] levels)
