@@ -153,8 +153,8 @@ public class Pairs_are_found_by_name
     }
 
     [Theory]
-    [InlineData("2026-03-05T07:15:30Z", 0)]
-    [InlineData("2026-03-05T09:45:30.5+02:30", 500)]
+    [InlineData("2026-03-05T07:15:30Z", 0.0)]
+    [InlineData("2026-03-05T09:45:30.5+02:30", 500.0)]
     [InlineData("2026-03-05T07:15:30.1234567Z", 123.4567)]
     [InlineData("", null)]
     public void Times_with_and_without_fractions_are_read(string time, double? milliseconds)
