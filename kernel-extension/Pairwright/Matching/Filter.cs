@@ -1,0 +1,19 @@
+namespace Pairwright.Matching;
+
+/// <summary>A pass over the whole map after all checks: the last stage of a recipe.</summary>
+public abstract class Filter : Stage
+{
+    /// <summary>Removes patches of similar disparity that are too small to be believed.</summary>
+    /// <param name="smallestPx">The least number of pixels that a patch must have.</param>
+    /// <param name="stepPx">The largest difference between neighbours of one patch, in pixels.</param>
+    /// <exception cref="UserErrorException">A number is not above zero.</exception>
+    public static Filter Speckle(int smallestPx = 100, double stepPx = 1) => new SpeckleFilter(smallestPx, stepPx);
+
+    /// <summary>The median of the measured disparities of each measured pixel's 3 × 3 neighbourhood; the lower one of an even number.</summary>
+    public static Filter Median { get; } = new MedianFilter();
+
+    /// <summary>Changes disparities and labels.</summary>
+    /// <param name="map">The map.</param>
+    /// <param name="stop">Asks to stop.</param>
+    public abstract void Apply(WorkingMap map, CancellationToken stop);
+}
