@@ -20,7 +20,7 @@ internal static class ChildProcess
         var pipeName = $"pairwright-{Guid.NewGuid():N}";
         await using var pipe = new NamedPipeServerStream(pipeName, PipeDirection.In, 1, PipeTransmissionMode.Byte, PipeOptions.Asynchronous | PipeOptions.CurrentUserOnly);
         using var process = Start(pipeName, limits);
-        var lastWords = new LastWords();
+        var errors = new ErrorText();
 
         // Bounded, so that a child that floods us with outputs waits for us instead of filling our memory.
         var messages = Channel.CreateBounded<ChildMessage>(64);
@@ -36,7 +36,7 @@ internal static class ChildProcess
         var reading = ReadMessagesAsync(pipe, process, messages.Writer);
         var texts = Task.WhenAll(
             ReadTextAsync(process.StandardOutput, "stdout", messages.Writer, null),
-            ReadTextAsync(process.StandardError, "stderr", messages.Writer, lastWords));
+            ReadTextAsync(process.StandardError, "stderr", messages.Writer, errors));
 
         await SendAsync(process, job);
         var kind = await watching;
@@ -46,7 +46,7 @@ internal static class ChildProcess
         await Task.WhenAny(texts, Task.Delay(TimeSpan.FromSeconds(1), CancellationToken.None));
         messages.Writer.TryComplete();
         await hearing;
-        return new ChildEnd(kind, process.ExitCode, lastWords.ToString());
+        return new ChildEnd(kind, process.ExitCode, errors.ToString());
     }
 
     private static Process Start(string pipeName, RunLimits limits)
@@ -167,14 +167,14 @@ internal static class ChildProcess
     }
 
     /// <summary>What native libraries and the runtime itself print reaches us here; a cell's own text comes as messages.</summary>
-    private static async Task ReadTextAsync(StreamReader reader, string name, ChannelWriter<ChildMessage> messages, LastWords? lastWords)
+    private static async Task ReadTextAsync(StreamReader reader, string name, ChannelWriter<ChildMessage> messages, ErrorText? errors)
     {
         var buffer = new char[4096];
         int count;
         while ((count = await reader.ReadAsync(buffer)) > 0)
         {
             var text = new string(buffer, 0, count);
-            lastWords?.Add(text);
+            errors?.Add(text);
             if (!messages.TryWrite(new ChildMessage { Kind = ChildMessageKind.Stream, Stream = name, Text = text }))
             {
                 try
@@ -185,32 +185,6 @@ internal static class ChildProcess
                 {
                     return;
                 }
-            }
-        }
-    }
-
-    private sealed class LastWords
-    {
-        private const int Most = 4000;
-        private readonly StringBuilder _text = new();
-
-        public void Add(string text)
-        {
-            lock (_text)
-            {
-                _text.Append(text);
-                if (_text.Length > 2 * Most)
-                {
-                    _text.Remove(0, _text.Length - Most);
-                }
-            }
-        }
-
-        public override string ToString()
-        {
-            lock (_text)
-            {
-                return _text.ToString();
             }
         }
     }

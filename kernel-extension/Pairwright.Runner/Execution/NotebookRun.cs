@@ -85,9 +85,10 @@ internal sealed class NotebookRun
             Stop = RunStop.ByEnd(running, end, Limits);
             running?.AddError("Stopped", Stop.Sentence, [Stop.Sentence]);
             running?.Fail();
+            changed(ChildMessageKind.CellFailed, running);
         }
         Ended = DateTimeOffset.Now;
-        changed(ChildMessageKind.Finished, Stop?.Cell);
+        changed(ChildMessageKind.Finished, null);
     }
 
     private void RequireCSharpCells()

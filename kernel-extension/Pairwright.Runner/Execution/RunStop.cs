@@ -40,17 +40,17 @@ internal sealed record RunStop(string Sentence, CellRun? Cell)
 
     private static string ByExit(CellRun? cell, ChildEnd end, RunLimits limits, string running)
     {
-        if (end.LastWords.Contains("Out of memory", StringComparison.OrdinalIgnoreCase))
+        if (end.ErrorText.Contains("Out of memory", StringComparison.OrdinalIgnoreCase))
         {
             return TooMuchMemory(cell, limits);
         }
         return (end.ExitCode, cell) switch
         {
             (128 + 9, _) => $"The system killed the process {running}, most likely because the machine ran out of memory; work on fewer or smaller pictures at a time.",
-            (> 128 and < 128 + 65, _) when end.LastWords.Contains("Stack overflow", StringComparison.OrdinalIgnoreCase) =>
+            (> 128 and < 128 + 65, _) when end.ErrorText.Contains("Stack overflow", StringComparison.OrdinalIgnoreCase) =>
                 $"The process crashed {running}: a method calls itself without end; correct it and run again.",
-            (> 128 and < 128 + 65, _) => $"The process crashed {running} (signal {end.ExitCode - 128}{LastLine(end)}); the report holds what it printed last.",
-            (_, null) => $"The process that runs the cells ended {running} (exit code {end.ExitCode}{LastLine(end)}); run it again, and report this if it comes back.",
+            (> 128 and < 128 + 65, _) => $"The process crashed {running} (signal {end.ExitCode - 128}{FirstError(end)}); the report holds what it printed last.",
+            (_, null) => $"The process that runs the cells ended {running} (exit code {end.ExitCode}{FirstError(end)}); run it again, and report this if it comes back.",
             _ => $"{cell.Name} ended the process itself (exit code {end.ExitCode}); take out the call that does, such as Environment.Exit.",
         };
     }
@@ -58,9 +58,9 @@ internal sealed record RunStop(string Sentence, CellRun? Cell)
     private static string TooMuchMemory(CellRun? cell, RunLimits limits) =>
         $"{cell?.Name ?? "The kernel"} needed more memory than the limit of {limits.MemoryMb} MB; work on fewer or smaller pictures at a time, or allow more with --memory-limit.";
 
-    private static string LastLine(ChildEnd end)
+    private static string FirstError(ChildEnd end)
     {
-        var line = end.LastWords.Split('\n', StringSplitOptions.RemoveEmptyEntries | StringSplitOptions.TrimEntries).FirstOrDefault();
+        var line = end.ErrorText.Split('\n', StringSplitOptions.RemoveEmptyEntries | StringSplitOptions.TrimEntries).FirstOrDefault();
         return line is null ? "" : $": {line}";
     }
 

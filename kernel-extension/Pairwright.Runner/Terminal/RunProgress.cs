@@ -9,6 +9,9 @@ internal sealed class RunProgress(IAnsiConsole console, NotebookRun run)
 {
     private const int CaptionWidth = 52;
 
+    /// <summary>A log has no width of its own; a row of the table should stay on one line.</summary>
+    private const int LogWidth = 160;
+
     /// <summary>Whether lines can be rewritten and coloured; in a file or a build server's log they cannot.</summary>
     private readonly bool _live = console.Profile.Capabilities.Interactive && console.Profile.Out.IsTerminal;
 
@@ -55,6 +58,10 @@ internal sealed class RunProgress(IAnsiConsole console, NotebookRun run)
         console.WriteLine();
         if (run.Verdicts.Count > 0)
         {
+            if (!_live)
+            {
+                console.Profile.Width = LogWidth;
+            }
             console.Write(Table());
         }
         Line(Wording.Summary(run));
