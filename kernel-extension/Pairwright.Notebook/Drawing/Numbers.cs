@@ -1,0 +1,91 @@
+using System.Globalization;
+
+namespace Pairwright.Notebook.Drawing;
+
+/// <summary>Numbers as a report prints them: a true minus sign, digits that the uncertainty carries, always the unit.</summary>
+internal static class Numbers
+{
+    public const string NoValue = "no value";
+
+    /// <summary>A value with a fixed number of decimals and its unit.</summary>
+    public static string Text(double value, int decimals, string unit = "") =>
+        double.IsNaN(value) ? NoValue : WithUnit(Fixed(value, decimals), unit);
+
+    /// <summary>A value with about as many significant digits as asked.</summary>
+    public static string Significant(double value, int digits, string unit = "") =>
+        double.IsNaN(value) ? NoValue : WithUnit(Shortest(value, digits), unit);
+
+    /// <summary>A value with its standard uncertainty, both rounded to the uncertainty's second digit (JCGM 100:2008, 7.2.6).</summary>
+    public static string WithSigma(double value, double sigma, string unit = "")
+    {
+        if (double.IsNaN(value))
+        {
+            return NoValue;
+        }
+
+        if (double.IsNaN(sigma))
+        {
+            return Significant(value, 6, unit) + " (uncertainty unknown)";
+        }
+
+        if (sigma <= 0 || double.IsInfinity(sigma))
+        {
+            return Significant(value, 6, unit) + (sigma == 0 ? " (held fixed)" : " (uncertainty unbounded)");
+        }
+
+        var decimals = 1 - (int)Math.Floor(Math.Log10(sigma));
+        if (decimals > 9)
+        {
+            return $"({Scientific(value)} ± {Scientific(sigma, 2)}){(unit.Length == 0 ? "" : " " + unit)}";
+        }
+
+        return WithUnit($"{Fixed(value, Math.Max(decimals, 0))} ± {Fixed(sigma, Math.Max(decimals, 0))}", unit);
+    }
+
+    /// <summary>A share from 0 to 1 in per cent.</summary>
+    public static string Percent(double share) => double.IsNaN(share) ? NoValue : Fixed(100 * share, share is > 0 and < 0.0995 ? 2 : 1) + " %";
+
+    /// <summary>A number in powers of ten, such as 1.25·10⁻⁷.</summary>
+    public static string Scientific(double value, int digits = 4)
+    {
+        if (double.IsNaN(value))
+        {
+            return NoValue;
+        }
+
+        if (value == 0 || !double.IsFinite(value))
+        {
+            return Fixed(value, 0);
+        }
+
+        var power = (int)Math.Floor(Math.Log10(Math.Abs(value)));
+        return $"{Fixed(value / Math.Pow(10, power), digits - 1)}·10{Raised(power)}";
+    }
+
+    public static string Fixed(double value, int decimals)
+    {
+        if (double.IsInfinity(value))
+        {
+            return value > 0 ? "∞" : "−∞";
+        }
+
+        var rounded = Math.Round(value, Math.Clamp(decimals, 0, 15)) + 0.0; // adding zero turns −0 into 0
+        return rounded.ToString("F" + Math.Max(decimals, 0), CultureInfo.InvariantCulture).Replace('-', '−');
+    }
+
+    private static string Shortest(double value, int digits)
+    {
+        if (value == 0 || !double.IsFinite(value))
+        {
+            return Fixed(value, 0);
+        }
+
+        var power = (int)Math.Floor(Math.Log10(Math.Abs(value)));
+        return power < -4 || power > 7 ? Scientific(value, digits) : Fixed(value, Math.Max(digits - 1 - power, 0));
+    }
+
+    private static string WithUnit(string number, string unit) => unit.Length == 0 ? number : $"{number} {unit}";
+
+    private static string Raised(int power) =>
+        string.Concat(power.ToString(CultureInfo.InvariantCulture).Select(c => c == '-' ? '⁻' : "⁰¹²³⁴⁵⁶⁷⁸⁹"[c - '0']));
+}

@@ -1,0 +1,31 @@
+namespace Pairwright.Notebook.Drawing;
+
+/// <summary>The bar beside a coloured map that says which colour stands for which value, with the unit.</summary>
+internal static class ScaleBar
+{
+    public const double Width = 74;
+
+    /// <summary>An upright bar, the largest value on top, and the stripes that stand for no value beneath it.</summary>
+    public static Svg Upright(ColourScale scale, double least, double most, string unit, double height)
+    {
+        const double bar = 16;
+        const double top = 24;
+        var length = height - top - 40;
+        var drawing = new Svg(Width, height, $"Scale from {Numbers.Significant(least, 4)} to {Numbers.Significant(most, 4)} {unit}");
+        drawing.Text(0, 13, unit, size: 11, colour: Ink.Quiet);
+        drawing.Image(0, top, bar, length, Raster.From(1, 256, (_, v) => scale.At(1 - v / 255.0)));
+        drawing.Rectangle(0, top, bar, length, "none", stroke: Stroke.Frame);
+        var about = Math.Max(2, (int)(length / 45));
+        var step = Ticks.Step(most - least, about);
+        foreach (var tick in Ticks.Within(least, most, about))
+        {
+            var y = top + (1 - (tick - least) / (most - least)) * length;
+            drawing.Line(bar, y, bar + 4, y, new(Ink.Quiet)).Text(bar + 7, y + 3.5, Ticks.Label(tick, step), size: 10.5, colour: Ink.Quiet);
+        }
+
+        drawing.Image(0, top + length + 12, bar, bar, Raster.From(16, 16, Pictures.Stripe));
+        drawing.Rectangle(0, top + length + 12, bar, bar, "none", stroke: Stroke.Frame);
+        drawing.Text(bar + 5, top + length + 24, "no value", size: 10.5, colour: Ink.Quiet);
+        return drawing;
+    }
+}
