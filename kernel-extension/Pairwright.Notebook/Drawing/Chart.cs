@@ -99,6 +99,9 @@ internal sealed class Chart
         return this;
     }
 
+    /// <summary>An entry of the legend for a colour.</summary>
+    public Chart Key(string name, string colour) => Named(name, colour, false);
+
     /// <summary>A picture over the whole plot.</summary>
     public Chart Image(Raster raster)
     {

@@ -33,7 +33,7 @@ internal static class Numbers
             return Significant(value, 6, unit) + (sigma == 0 ? " (held fixed)" : " (uncertainty unbounded)");
         }
 
-        var decimals = 1 - (int)Math.Floor(Math.Log10(sigma));
+        var decimals = Decimals(sigma);
         if (decimals > 9)
         {
             return $"({Scientific(value)} ± {Scientific(sigma, 2)}){(unit.Length == 0 ? "" : " " + unit)}";
@@ -41,6 +41,13 @@ internal static class Numbers
 
         return WithUnit($"{Fixed(value, Math.Max(decimals, 0))} ± {Fixed(sigma, Math.Max(decimals, 0))}", unit);
     }
+
+    /// <summary>A value with its expanded uncertainty, rounded in the same way.</summary>
+    public static string WithExpanded(double value, double expanded, string unit = "") => WithSigma(value, expanded, unit);
+
+    /// <summary>A value with as many decimals as an uncertainty of two significant digits has.</summary>
+    public static string Like(double value, double sigma, string unit = "") =>
+        sigma > 0 && double.IsFinite(sigma) ? Text(value, Math.Clamp(Decimals(sigma), 0, 9), unit) : Significant(value, 4, unit);
 
     /// <summary>A share from 0 to 1 in per cent.</summary>
     public static string Percent(double share) => double.IsNaN(share) ? NoValue : Fixed(100 * share, share is > 0 and < 0.0995 ? 2 : 1) + " %";
@@ -71,6 +78,13 @@ internal static class Numbers
 
         var rounded = Math.Round(value, Math.Clamp(decimals, 0, 15)) + 0.0; // adding zero turns −0 into 0
         return rounded.ToString("F" + Math.Max(decimals, 0), CultureInfo.InvariantCulture).Replace('-', '−');
+    }
+
+    // Where the second significant digit stands; 0.0996 rounds to 0.10, one digit fewer.
+    private static int Decimals(double sigma)
+    {
+        var decimals = 1 - (int)Math.Floor(Math.Log10(sigma));
+        return Math.Round(sigma * Math.Pow(10, decimals)) >= 100 ? decimals - 1 : decimals;
     }
 
     private static string Shortest(double value, int digits)

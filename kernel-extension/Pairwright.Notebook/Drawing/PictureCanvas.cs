@@ -56,6 +56,12 @@ internal sealed class PictureCanvas
         return this;
     }
 
+    public PictureCanvas Dot(double u, double v, string colour, double radius = 1.5, double opacity = 1)
+    {
+        inner.Circle(X(u), Y(v), radius, colour, opacity);
+        return this;
+    }
+
     /// <summary>A ring with a dark rim, seen on light and dark ground.</summary>
     public PictureCanvas Ring(double u, double v, string colour, double radius = 4)
     {

@@ -8,6 +8,11 @@ internal static class RendererRegistry
         new StereoPairRenderer(),
         new CameraRenderer(),
         new RigRenderer(),
+        new RigCalibrationRenderer(),
+        new MeasuredValueRenderer(),
+        new MeasuredValueListRenderer(),
+        new VerdictRenderer(),
+        new VerdictListRenderer(),
     ];
 
     /// <summary>Registers every renderer of this extension with the notebook's formatters. Registering twice does no harm.</summary>
