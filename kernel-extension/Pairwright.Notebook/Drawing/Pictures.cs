@@ -5,10 +5,6 @@ namespace Pairwright.Notebook.Drawing;
 /// <summary>Turns pictures and maps into small rasters for a page.</summary>
 internal static class Pictures
 {
-    /// <summary>The grey of a pixel that holds no value, drawn as slanting stripes of two greys.</summary>
-    private static readonly (byte, byte, byte) StripeDark = (150, 150, 150);
-    private static readonly (byte, byte, byte) StripeLight = (205, 205, 205);
-
     /// <summary>The picture scaled down to at most a width by area averaging; never enlarged.</summary>
     /// <param name="picture">The picture.</param>
     /// <param name="width">The largest width, in pixels.</param>
@@ -64,18 +60,15 @@ internal static class Pictures
 
     /// <summary>A map in colours; a pixel without a value is striped, so that it can be taken for no value.</summary>
     /// <remarks>Every pixel shown is one pixel of the map: averaging over an edge would invent values that nobody measured.</remarks>
-    public static Raster Coloured(ScalarMap map, ColourScale scale, double least, double most, int width = 560)
+    public static Raster Coloured(ScalarMap map, Ramp ramp, double least, double most, int width = 560)
     {
         var (w, h) = Fitted(map.Size.Width, map.Size.Height, width);
         return Raster.From(w, h, (u, v) =>
         {
             var value = map[(2 * u + 1) * map.Size.Width / (2 * w), (2 * v + 1) * map.Size.Height / (2 * h)];
-            return float.IsNaN(value) ? Stripe(u, v) : scale.At((value - least) / (most - least));
+            return float.IsNaN(value) ? ColourScale.NoValue(u, v) : ramp.At((value - least) / (most - least));
         });
     }
-
-    /// <summary>The stripes that stand for no value.</summary>
-    public static (byte R, byte G, byte B) Stripe(int u, int v) => (u + v) % 8 < 2 ? StripeDark : StripeLight;
 
     /// <summary>The size of a picture scaled down to at most a width.</summary>
     public static (int Width, int Height) Fitted(int width, int height, int most) =>

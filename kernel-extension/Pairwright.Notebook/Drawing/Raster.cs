@@ -23,7 +23,7 @@ internal sealed class Raster
     public byte[] Levels { get; }
 
     /// <summary>A raster made pixel by pixel.</summary>
-    public static Raster From(int width, int height, Func<int, int, (byte R, byte G, byte B)> colour)
+    public static Raster From(int width, int height, Func<int, int, (byte Red, byte Green, byte Blue)> colour)
     {
         var levels = new byte[width * height * 3];
         for (var (v, at) = (0, 0); v < height; v++)

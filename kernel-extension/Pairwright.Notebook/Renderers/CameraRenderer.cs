@@ -20,12 +20,10 @@ internal sealed class CameraRenderer : Renderer<Camera>
             ("lens distortion", camera.Distortion.IsNone ? "none" : Terms(camera.Distortion)))
         .Row(LensShift("What the lens shifts", camera));
 
-    /// <summary>Across, down and from corner to corner, measured on undistorted rays at the picture's edges.</summary>
     internal static string FieldOfView(Camera camera)
     {
-        var (w, h) = (camera.Size.Width - 0.5, camera.Size.Height - 0.5);
-        var (u, v) = (camera.Matrix.CentreU, camera.Matrix.CentreV);
-        return $"{Angle(camera, (-0.5, v), (w, v))} × {Angle(camera, (u, -0.5), (u, h))}, diagonal {Angle(camera, (-0.5, -0.5), (w, h))}";
+        var field = camera.FieldOfView;
+        return $"{Numbers.Fixed(field.AcrossDegrees, 1)}° × {Numbers.Fixed(field.DownDegrees, 1)}°, diagonal {Numbers.Fixed(field.DiagonalDegrees, 1)}°";
     }
 
     /// <summary>Arrows from where an undistorted lens would form a point to where this one does, on a grid over the picture.</summary>
@@ -65,9 +63,4 @@ internal sealed class CameraRenderer : Renderer<Camera>
     }
 
     private static double Length(IdealPixel ideal, RawPixel raw) => Math.Sqrt(Math.Pow(raw.U - ideal.U, 2) + Math.Pow(raw.V - ideal.V, 2));
-
-    private static string Angle(Camera camera, (double U, double V) first, (double U, double V) second) =>
-        camera.TryUndistort(new(first.U, first.V)) is { } a && camera.TryUndistort(new(second.U, second.V)) is { } b
-            ? Numbers.Text(180 / Math.PI * Math.Acos(Math.Clamp(camera.Ray(a).Dot(camera.Ray(b)), -1, 1)), 1) + "°"
-            : "beyond the lens model";
 }

@@ -9,15 +9,20 @@ internal sealed class StereoPairRenderer : Renderer<StereoPair>
     public override bool HasPicture => true;
 
     public override string Plain(StereoPair pair) => Lines(
-        $"Stereo pair, left {pair.Left.Size} px, right {pair.Right.Size} px, {pair.Left.SignificantBits} bits"
-        + (pair.Rig is null ? ", rig not known" : $", baseline {Numbers.Text(pair.Rig.BaselineMm, 2, "mm")}"));
+    [
+        $"Stereo pair{(pair.Name.Length == 0 ? "" : " " + pair.Name)}, left {pair.Left.Size} px, right {pair.Right.Size} px, {pair.Left.SignificantBits} bits"
+        + (pair.Rig is null ? ", rig not known" : $", baseline {Numbers.Text(pair.Rig.BaselineMm, 2, "mm")}"),
+        .. pair.Warnings.Select(warning => "Attention: " + warning),
+    ]);
 
     public override Raster Picture(StereoPair pair) => PairPictures.Beside(pair.Left, pair.Right);
 
     public override Card Draw(StereoPair pair)
     {
         var white = PairPictures.White(pair.Left, pair.Right);
-        var card = new Card("Stereo pair, as the lenses formed it", "Raw pixels; the level guides are there to compare heights, matching points of raw pictures need not share a row.")
+        var name = pair.Name.Length == 0 ? "" : $" {pair.Name}";
+        var card = new Card($"Stereo pair{name}, as the lenses formed it", "Raw pixels; the level guides are there to compare heights, matching points of raw pictures need not share a row.")
+            .Warnings(pair.Warnings)
             .Row(Side("Left (reference)", pair.Left, white), Side("Right", pair.Right, white))
             .Facts(Facts(pair));
         if (white < (1 << pair.Left.SignificantBits) - 1)
@@ -53,6 +58,13 @@ internal sealed class StereoPairRenderer : Renderer<StereoPair>
         foreach (var (name, picture) in new[] { ("left", pair.Left), ("right", pair.Right) })
         {
             yield return ($"{name} picture", $"{picture.Size} px, {picture.SignificantBits} bits{(picture.HasColour ? ", colour" : "")}");
+            yield return ($"{name}: mean level, saturated", $"{Numbers.Percent(picture.MeanLevel / ((1 << picture.SignificantBits) - 1))} of full scale, {Numbers.Percent(picture.SaturatedShare)} of pixels");
+            yield return ($"{name}: sharpness", Numbers.Text(picture.Sharpness, 3, "per px"));
+        }
+
+        if (pair.Skew is { } skew)
+        {
+            yield return ("right taken after left", Numbers.Text(skew.TotalMilliseconds, 3, "ms"));
         }
 
         yield return ("rig", pair.Rig is null ? "not known" : $"baseline {Numbers.Text(pair.Rig.BaselineMm, 2, "mm")}");

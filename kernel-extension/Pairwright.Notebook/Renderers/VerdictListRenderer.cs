@@ -20,7 +20,7 @@ internal sealed class VerdictListRenderer : Renderer<IEnumerable<Verdict>>
             + $"<td class=\"pw-n\">{Markup.Escape(VerdictDrawing.Value(verdict))}</td><td>{VerdictDrawing.Interval(verdict, 200).ToMarkup()}</td>"
             + $"<td class=\"pw-n\">{Markup.Escape(VerdictDrawing.Margin(verdict))}</td>"
             + $"<td style=\"font-weight:650;white-space:nowrap;color:{VerdictDrawing.Colour(verdict.Outcome)}\">{VerdictDrawing.Word(verdict.Outcome)}</td></tr>");
-        var factors = all.Select(verdict => verdict.CoverageFactor).Distinct().Select(k => Numbers.Significant(k, 3));
+        var factors = all.Select(verdict => verdict.CoverageFactor).Distinct().Select(VerdictDrawing.Factor);
         return new Card($"Requirements: {string.Join(", ", counts)}", $"Value ± expanded uncertainty (k = {string.Join(", ", factors)}) against the limits (JCGM 106); undecided counts as not met.")
             .Raw(new(
                 "<table><thead><tr><th>requirement</th><th>limit</th><th class=\"pw-n\">measured</th><th></th><th class=\"pw-n\">margin</th><th>verdict</th></tr></thead><tbody>"

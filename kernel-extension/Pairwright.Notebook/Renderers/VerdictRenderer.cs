@@ -11,15 +11,15 @@ internal sealed class VerdictRenderer : Renderer<Verdict>
     public override Card Draw(Verdict verdict)
     {
         var colour = VerdictDrawing.Colour(verdict.Outcome);
-        return new Card(verdict.Requirement.Name, $"{verdict.Requirement.Limit}, decided with k = {Numbers.Significant(verdict.CoverageFactor, 3)} (JCGM 106); undecided counts as not met")
+        return new Card(verdict.Requirement.Name, $"{verdict.Requirement.Limit}, decided with k = {VerdictDrawing.Factor(verdict.CoverageFactor)} (JCGM 106); undecided counts as not met")
             .Raw(new($"<p style=\"font-size:17px;font-weight:650;color:{colour};margin:4px 0\">{VerdictDrawing.Word(verdict.Outcome)}</p>"))
             .Row(VerdictDrawing.Interval(verdict))
             .Facts(
-                ($"measured ± expanded uncertainty (k = {Numbers.Significant(verdict.CoverageFactor, 3)})", VerdictDrawing.Value(verdict)),
+                ($"measured ± expanded uncertainty (k = {VerdictDrawing.Factor(verdict.CoverageFactor)})", VerdictDrawing.Value(verdict)),
                 ("limit", verdict.Requirement.Limit),
                 ("margin", VerdictDrawing.Margin(verdict)),
                 ("standard uncertainty: random, common", $"{Numbers.Significant(verdict.Measured.RandomSigma, 2, verdict.Measured.Unit)}, {Numbers.Significant(verdict.Measured.CommonSigma, 2, verdict.Measured.Unit)}"),
-                ("probability inside the limits", Numbers.Percent(verdict.ConformanceProbability)))
+                ("probability inside the limits", VerdictDrawing.Probability(verdict)))
             .Caption(verdict.Statement);
     }
 }

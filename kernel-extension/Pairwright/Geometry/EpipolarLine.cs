@@ -2,7 +2,7 @@ namespace Pairwright.Geometry;
 
 /// <summary>A line in one view's ideal pixels on which the match of a point of the other view must lie: A·u + B·v + C = 0 with A² + B² = 1.</summary>
 /// <remarks>
-/// Immutable; equal when view and coefficients are. A·u + B·v + C is a signed distance in pixels. In a raw picture the line is a curve:
+/// Immutable; equal when view, coefficients and picture size are. A·u + B·v + C is a signed distance in pixels. In a raw picture the line is a curve:
 /// <see cref="Rig.RawCurveOf(EpipolarLine, double)"/>.
 /// </remarks>
 public sealed record EpipolarLine
@@ -12,8 +12,9 @@ public sealed record EpipolarLine
     /// <param name="b">Factor of the row.</param>
     /// <param name="c">Constant.</param>
     /// <param name="view">The view in which the line lies.</param>
+    /// <param name="size">The size of that view's picture, where it is known.</param>
     /// <exception cref="UserErrorException">A and B are both zero, or a coefficient is not finite.</exception>
-    public EpipolarLine(double a, double b, double c, View view)
+    public EpipolarLine(double a, double b, double c, View view, PictureSize? size = null)
     {
         var length = Math.Sqrt(a * a + b * b);
         if (!(length > 0) || !double.IsFinite(length) || !double.IsFinite(c))
@@ -22,7 +23,7 @@ public sealed record EpipolarLine
                 $"The coefficients ({a}, {b}, {c}) are no line in the {view.Name()} view; give finite ones of which the first two are not both zero.");
         }
 
-        (A, B, C, View) = (a / length, b / length, c / length, view);
+        (A, B, C, View, Size) = (a / length, b / length, c / length, view, size);
     }
 
     /// <summary>Factor of the column.</summary>
@@ -36,6 +37,9 @@ public sealed record EpipolarLine
 
     /// <summary>The view in which the line lies.</summary>
     public View View { get; }
+
+    /// <summary>The size of the picture of that view, where it is known, as for the lines of a rig.</summary>
+    public PictureSize? Size { get; }
 
     /// <summary>The unit vector along the line that has no component to the left (straight down where the line is a column).</summary>
     public (double U, double V) Direction => B < 0 || (B == 0 && A > 0) ? (-B, A) : (B, -A);

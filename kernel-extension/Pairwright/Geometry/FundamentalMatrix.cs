@@ -40,6 +40,12 @@ public sealed class FundamentalMatrix
     /// <summary>The matches and residuals it was estimated from; nothing where it came from a rig or was given.</summary>
     public FundamentalEstimation? Estimation { get; }
 
+    /// <summary>The size of the left picture, where it is known, as for a rig's own matrix; lines in that view carry it.</summary>
+    public PictureSize? LeftSize { get; private init; }
+
+    /// <summary>The size of the right picture, where it is known.</summary>
+    public PictureSize? RightSize { get; private init; }
+
     /// <summary>The fundamental matrix of a given matrix of any scale: the nearest one of rank two in the Frobenius norm, normalised.</summary>
     /// <param name="matrix">Nine finite numbers, of rank two or three.</param>
     /// <exception cref="UserErrorException">An entry is not finite, or the rank is below two.</exception>
@@ -92,11 +98,11 @@ public sealed class FundamentalMatrix
 
     /// <summary>The line in the right view on which the match of a left pixel lies: F · x_left.</summary>
     /// <exception cref="UserErrorException">The pixel is the epipole.</exception>
-    public EpipolarLine LineInRight(IdealPixel left) => Line(Matrix, left, View.Right);
+    public EpipolarLine LineInRight(IdealPixel left) => Line(Matrix, left, View.Right, RightSize);
 
     /// <summary>The line in the left view on which the match of a right pixel lies: Fᵀ · x_right.</summary>
     /// <exception cref="UserErrorException">The pixel is the epipole.</exception>
-    public EpipolarLine LineInLeft(IdealPixel right) => Line(Matrix.Transpose, right, View.Left);
+    public EpipolarLine LineInLeft(IdealPixel right) => Line(Matrix.Transpose, right, View.Left, LeftSize);
 
     /// <summary>The line in the other view on which the match of a view's pixel lies.</summary>
     /// <exception cref="UserErrorException">The pixel is the epipole.</exception>
@@ -154,7 +160,11 @@ public sealed class FundamentalMatrix
             new(rig.Left.Matrix.Matrix * -(rotation.Transpose * translation), View.Left),
             new(rig.Right.Matrix.Matrix * translation, View.Right),
             0,
-            null);
+            null)
+        {
+            LeftSize = rig.Left.Size,
+            RightSize = rig.Right.Size,
+        };
     }
 
     internal static FundamentalMatrix Estimated(Matrix3x3 rankTwo, double rankTwoDeviation, FundamentalEstimation? estimation) =>
@@ -163,12 +173,12 @@ public sealed class FundamentalMatrix
     internal static Vector3D Homogeneous(IdealPixel pixel) => new(pixel.U, pixel.V, 1);
 
     // At the epipole rounding leaves a line of some direction: sums that cancel to their last digits are zero.
-    private static EpipolarLine Line(Matrix3x3 matrix, IdealPixel pixel, View view)
+    private static EpipolarLine Line(Matrix3x3 matrix, IdealPixel pixel, View view, PictureSize? size)
     {
         var line = matrix * Homogeneous(pixel);
         var terms = (matrix.Row1.Norm + matrix.Row2.Norm) * Homogeneous(pixel).Norm;
         return Math.Abs(line.X) + Math.Abs(line.Y) > 1e-15 * terms
-            ? new(line.X, line.Y, line.Z, view)
+            ? new(line.X, line.Y, line.Z, view, size)
             : throw new UserErrorException(
                 $"Pixel ({pixel.U:0.###}, {pixel.V:0.###}) is the epipole of the {view.Other().Name()} view, whose match may lie anywhere in the {view.Name()} one; choose another pixel.");
     }
