@@ -8,6 +8,13 @@ internal static class FundamentalEstimator
     private const int SampleSize = 8;
     private const int MostSamples = 10_000;
 
+    // A sample free of outliers may still be a poor one, where its eight points lie close together or nearly in a plane; so many are drawn
+    // however few would do.
+    private const int FewestSamples = 300;
+
+    // How many of the best samples are refined.
+    private const int Refinements = 5;
+
     // Below this share of the largest, the second smallest singular value of the equations is rounding: they have more than one solution.
     private const double SmallestDeterminacy = 1e-9;
 
@@ -34,35 +41,19 @@ internal static class FundamentalEstimator
         }
 
         IdealMatch[] all = [.. matches];
-        var (best, samples) = BestSample(all, tolerancePx, seed, confidence);
-        if (best is not { } estimate)
+        var (candidates, samples) = BestSamples(all, tolerancePx, seed, confidence);
+        if (candidates.Count == 0)
         {
             throw new UserErrorException(
                 $"The {all.Length} matches do not fix a fundamental matrix: every sample of eight lies in one point, line or plane; give matches of points at several depths.");
         }
 
-        // The refined matrix may gain or lose a match at the tolerance; a few rounds settle that.
-        IdealMatch[] consensus = [];
-        for (var round = 0; round < 10; round++)
-        {
-            var consistent = Consistent(estimate.Matrix, all, tolerancePx);
-            if (consistent.Length < SampleSize)
-            {
-                throw new UserErrorException(
-                    $"Only {consistent.Length} of {all.Length} matches agree on a fundamental matrix within {tolerancePx} px, and eight are needed; give better matches or a larger tolerance.");
-            }
-
-            if (consistent.SequenceEqual(consensus))
-            {
-                break;
-            }
-
-            consensus = consistent;
-            estimate = estimate with { Matrix = SampsonRefinement.Refine(estimate.Matrix, consensus) };
-        }
-
-        var refined = estimate.Matrix;
-        return WithEstimation(estimate, all, match => Math.Abs(Sampson(refined, match)) <= tolerancePx, tolerancePx, samples, seed);
+        var refined = candidates.Select(candidate => Refined(candidate, all, tolerancePx)).MinBy(estimate => Loss(estimate.Matrix, all, tolerancePx));
+        var consistent = Consistent(refined.Matrix, all, tolerancePx).Length;
+        return consistent >= SampleSize
+            ? WithEstimation(refined, all, match => Math.Abs(Sampson(refined.Matrix, match)) <= tolerancePx, tolerancePx, samples, seed)
+            : throw new UserErrorException(
+                $"Only {consistent} of {all.Length} matches agree on a fundamental matrix within {tolerancePx} px, and eight are needed; give better matches or a larger tolerance.");
     }
 
     public static double Sampson(in Matrix3x3 f, IdealMatch match)
@@ -83,12 +74,13 @@ internal static class FundamentalEstimator
         return new(scale, 0, -scale * u, 0, scale, -scale * v, 0, 0, 1);
     }
 
-    private static (Estimate? Best, int Samples) BestSample(IdealMatch[] all, double tolerancePx, int seed, double confidence)
+    // The best few, for the best sample need not lead to the best matrix.
+    private static (List<Estimate> Best, int Samples) BestSamples(IdealMatch[] all, double tolerancePx, int seed, double confidence)
     {
         var random = new Random(seed);
         var places = Enumerable.Range(0, all.Length).ToArray();
         var sample = new IdealMatch[SampleSize];
-        Estimate? best = null;
+        var best = new PriorityQueue<Estimate, double>();
         var (least, needed, drawn) = (double.PositiveInfinity, (double)MostSamples, 0);
         for (; drawn < needed; drawn++)
         {
@@ -99,30 +91,55 @@ internal static class FundamentalEstimator
                 sample[i] = all[places[i]];
             }
 
-            // A better sample is improved by all that agree with it (Chum, Matas and Kittler 2003).
-            for (var estimate = EightPointsOf(sample); estimate is { } candidate;)
+            if (EightPointsOf(sample) is not { } estimate)
             {
-                var loss = Loss(candidate.Matrix, all, tolerancePx);
-                if (!(loss < least))
-                {
-                    break;
-                }
+                continue;
+            }
 
-                (best, least) = (candidate, loss);
-                var consistent = Consistent(candidate.Matrix, all, tolerancePx);
-                needed = SamplesFor(consistent.Length / (double)all.Length, confidence);
-                estimate = consistent.Length >= SampleSize ? EightPointsOf(consistent) : null;
+            var loss = Loss(estimate.Matrix, all, tolerancePx);
+            if (best.Count < Refinements)
+            {
+                best.Enqueue(estimate, -loss);
+            }
+            else
+            {
+                best.EnqueueDequeue(estimate, -loss);
+            }
+
+            if (loss < least)
+            {
+                least = loss;
+                needed = SamplesFor(Consistent(estimate.Matrix, all, tolerancePx).Length / (double)all.Length, confidence);
             }
         }
 
-        return (best, drawn);
+        return ([.. best.UnorderedItems.OrderByDescending(item => item.Priority).Select(item => item.Element)], drawn);
+    }
+
+    // Refined by the matches that agree, until they are the same: a better matrix may gain or lose one at the tolerance.
+    private static Estimate Refined(Estimate estimate, IdealMatch[] all, double tolerancePx)
+    {
+        IdealMatch[] consensus = [];
+        for (var round = 0; round < 10; round++)
+        {
+            var consistent = Consistent(estimate.Matrix, all, tolerancePx);
+            if (consistent.Length < SampleSize || consistent.SequenceEqual(consensus))
+            {
+                break;
+            }
+
+            consensus = consistent;
+            estimate = estimate with { Matrix = SampsonRefinement.Refine(estimate.Matrix, consensus) };
+        }
+
+        return estimate;
     }
 
     // So many that with the given probability one of them is free of outliers.
     private static double SamplesFor(double consistentShare, double confidence)
     {
         var spoilt = 1 - Math.Pow(consistentShare, SampleSize);
-        return spoilt < 1 ? Math.Min(MostSamples, Math.Log(1 - confidence) / Math.Log(spoilt)) : MostSamples;
+        return spoilt < 1 ? Math.Clamp(Math.Log(1 - confidence) / Math.Log(spoilt), FewestSamples, MostSamples) : MostSamples;
     }
 
     private static double Loss(Matrix3x3 matrix, IdealMatch[] matches, double tolerancePx)
@@ -131,7 +148,7 @@ internal static class FundamentalEstimator
         foreach (var match in matches)
         {
             var distance = Sampson(matrix, match);
-            sum += Math.Min(distance * distance, tolerancePx * tolerancePx);
+            sum += distance * distance < tolerancePx * tolerancePx ? distance * distance : tolerancePx * tolerancePx;
         }
 
         return sum;

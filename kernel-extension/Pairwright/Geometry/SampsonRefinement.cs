@@ -42,7 +42,7 @@ internal static class SampsonRefinement
                 var candidateSum = candidateResiduals.DotProduct(candidateResiduals);
                 if (candidateSum < sum)
                 {
-                    improved = sum - candidateSum > 1e-12 * sum;
+                    improved = sum - candidateSum > 1e-10 * sum;
                     (state, residuals, sum, damping) = (candidate, candidateResiduals, candidateSum, damping / 10);
                     if (!improved)
                     {
