@@ -28,7 +28,10 @@ internal sealed record NetpbmHeader(PictureHeader Header, bool IsText, int Sampl
         var isText = content[1] is (byte)'2' or (byte)'3';
         var samples = content[1] is (byte)'3' or (byte)'6' ? 3 : 1;
         var bytes = largest > 255 ? 2 : 1;
-        var needed = isText ? 0 : at + (width * height * samples * bytes);
+
+        // As text a sample takes a digit and a space at least. A size beyond the limit, which is refused later, must not overflow here.
+        var count = Math.Min(width, PictureHeader.MostPixels) * Math.Min(height, PictureHeader.MostPixels) * samples;
+        var needed = isText ? at + 2 * count - 1 : at + count * bytes;
         var cut = needed > content.Length ? $"its samples need {needed} bytes and the file has {content.Length}" : null;
         return new(new(PictureFormat.Netpbm, width, height, 8 * bytes, samples, LargestLevel: (int)largest, CutShort: cut), isText, at);
     }

@@ -48,7 +48,7 @@ internal static class TiffHeader
             // Values that do not fit into the entry stand elsewhere.
             var place = at + 4 + wordLength;
             var start = values * valueLength <= wordLength ? place : Number(content, place, wordLength, little);
-            if (values < 0 || start < 0 || start + values * valueLength > content.Length)
+            if (values < 0 || values > content.Length || start < 0 || start > content.Length || start + values * valueLength > content.Length)
             {
                 throw new ArgumentOutOfRangeException(nameof(content), "a TIFF entry points past the file");
             }
@@ -105,7 +105,7 @@ internal static class TiffHeader
 
     private static long Number(ReadOnlySpan<byte> content, long at, int length, bool little)
     {
-        if (at < 0 || at + length > content.Length)
+        if (at < 0 || at > content.Length - length)
         {
             throw new ArgumentOutOfRangeException(nameof(content), "the TIFF points past the file");
         }

@@ -147,6 +147,43 @@ public class Broken_pictures_are_refused_in_one_sentence
         }
     }
 
+    // One to three wrong bytes in a good file: it is read or refused, and nothing else happens.
+    [Theory]
+    [InlineData(".png")]
+    [InlineData(".jpg")]
+    [InlineData(".tiff")]
+    [InlineData(".bmp")]
+    [InlineData(".ppm")]
+    public void A_file_with_a_few_wrong_bytes_is_read_or_refused(string ending)
+    {
+        using var folder = new TestFolder();
+        using var mat = Mat.FromPixelData(6, 5, MatType.CV_8UC3, Array.ConvertAll(Patterns.Levels(90, 256, 9), level => (byte)level));
+        var whole = mat.ImEncode(ending);
+        var random = new Random(7);
+        var refused = 0;
+        for (var trial = 0; trial < 300; trial++)
+        {
+            var content = (byte[])whole.Clone();
+            for (var i = random.Next(3); i >= 0; i--)
+            {
+                content[random.Next(content.Length)] = (byte)random.Next(256);
+            }
+
+            var path = folder.Write($"wrong{ending}", content);
+            try
+            {
+                Picture.Read(path);
+            }
+            catch (UserErrorException fault)
+            {
+                Assert.Contains($"'{path}'", fault.Message);
+                refused++;
+            }
+        }
+
+        Assert.InRange(refused, 1, 300);
+    }
+
     private static string Refusal(string path)
     {
         var message = Assert.Throws<UserErrorException>(() => Picture.Read(path)).Message;

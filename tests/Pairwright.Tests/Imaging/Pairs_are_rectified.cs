@@ -1,3 +1,4 @@
+using OpenCvSharp;
 using Pairwright.Geometry;
 using Pairwright.Imaging;
 using Xunit;
@@ -55,6 +56,34 @@ public class Pairs_are_rectified
         Assert.InRange(count, 5000, Size.Area);
         Assert.InRange(Math.Sqrt(squares / count), 0, 3); // of 4095: less than a fifth of a grey level of an 8-bit picture
         Assert.Equal(12, picture.SignificantBits);
+    }
+
+    // Source: OpenCV's corner finder on the raw and on the rectified picture of a real board; the rig's lenses are the published ones.
+    [SkippableFact]
+    public void Corners_of_a_real_board_are_found_in_the_rectified_pictures_where_geometry_says()
+    {
+        using var folder = new TestFolder();
+        var pose = folder.Write(
+            "pose.yml", "%YAML:1.0\nR: !!opencv-matrix\n   rows: 3\n   cols: 1\n   dt: d\n   data: [ 0.01, 0.02, -0.01 ]\nT: !!opencv-matrix\n   rows: 3\n   cols: 1\n   dt: d\n   data: [ -83., 1., 1. ]\n");
+        var rig = RigFile.ReadMatrices(OpenData.Find("published/intrinsics.yml"), new(640, 480), posePath: pose);
+        double squares = 0;
+        var count = 0;
+        var pair = StereoPair.Read(OpenData.Find("boards/left01.jpg"), OpenData.Find("boards/right01.jpg"), rig);
+        var rectified = pair.Rectify(RectificationFit.Everything);
+        foreach (var view in Enum.GetValues<View>())
+        {
+            using var raw = Eight(pair[view]);
+            Assert.True(Cv2.FindChessboardCorners(raw, new(9, 6), out var found));
+            var expected = Refined(raw, found)
+                .Select(corner => rectified.Rectification!.Rectify(view, new RawPixel(corner.X, corner.Y))).ToArray();
+            using var straight = Eight(view == View.Left ? rectified.Left : rectified.Right);
+            var seen = Refined(straight, [.. expected.Select(corner => new Point2f((float)corner.U, (float)corner.V))]);
+            squares += expected.Zip(seen, (e, s) => Math.Pow(e.U - s.X, 2) + Math.Pow(e.V - s.Y, 2)).Sum();
+            count += expected.Length;
+        }
+
+        // The finder's window sees other pixels after the turn.
+        Assert.InRange(Math.Sqrt(squares / count), 0, 0.08);
     }
 
     [Fact]
@@ -138,6 +167,16 @@ public class Pairs_are_rectified
 
         Assert.Contains("20 × 20", fault.Message);
     }
+
+    private static Mat Eight(Picture picture)
+    {
+        var mat = new Mat(picture.Size.Height, picture.Size.Width, MatType.CV_8UC1);
+        PictureCodec.EightBits(picture.Grey, picture.SignificantBits).CopyTo(mat.AsSpan<byte>());
+        return mat;
+    }
+
+    private static Point2f[] Refined(Mat picture, Point2f[] corners) =>
+        Cv2.CornerSubPix(picture, corners, new(5, 5), new(-1, -1), new(CriteriaTypes.Eps | CriteriaTypes.MaxIter, 50, 0.001));
 
     // Smooth over directions, with periods of some 20 pixels.
     private static double Scene(Vector3D direction) =>
