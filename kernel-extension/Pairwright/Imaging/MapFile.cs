@@ -7,7 +7,7 @@ namespace Pairwright.Imaging;
 /// <summary>Writes and reads maps; the ending of the name chooses the format.</summary>
 /// <remarks>
 /// <list type="bullet">
-/// <item><c>.pfm</c>: 32-bit floating point, exact, no value is NaN. Both byte orders are read; infinite numbers, which some data sets write for no value, are read as NaN.</item>
+/// <item><c>.pfm</c>: 32-bit floating point, exact, no value is NaN. Both byte orders are read, the magnitude of the header's scale is not applied; infinite numbers, which some data sets write for no value, are read as NaN.</item>
 /// <item><c>.tif</c>, <c>.tiff</c>: 32-bit floating point, exact, no value is NaN.</item>
 /// <item><c>.png</c>: 16-bit levels, level = value × factor rounded, level 0 is no value. 8-bit levels are read too.</item>
 /// </list>

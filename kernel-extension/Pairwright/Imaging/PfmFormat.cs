@@ -7,8 +7,9 @@ namespace Pairwright.Imaging;
 
 /// <summary>The portable float map: a text header of three lines, then 32-bit numbers, the lowest row first.</summary>
 /// <remarks>
-/// The third line is a scale whose sign tells the byte order, negative for little-endian; its magnitude multiplies the numbers (from memory
-/// of the format's description by Debevec).
+/// The third line is a scale whose sign tells the byte order, negative for little-endian. Readers disagree whether its magnitude multiplies,
+/// divides or only describes the numbers; they are taken as stored, as published true disparities with a magnitude other than one mean them
+/// (common practice), and written with the magnitude one, on which all agree.
 /// </remarks>
 internal static class PfmFormat
 {
@@ -67,7 +68,6 @@ internal static class PfmFormat
             throw new UserErrorException($"'{path}' is cut short or damaged: its {size} numbers need {at + 4 * size.Area} bytes and the file has {content.Length}; copy or export it again.");
         }
 
-        var factor = Math.Abs(scale);
         var values = new float[size.Area];
         for (var v = height - 1; v >= 0; v--)
         {
@@ -75,7 +75,7 @@ internal static class PfmFormat
             {
                 var place = content.Slice(at, 4);
                 var value = scale < 0 ? BinaryPrimitives.ReadSingleLittleEndian(place) : BinaryPrimitives.ReadSingleBigEndian(place);
-                values[v * width + u] = float.IsFinite(value) ? value * factor : float.NaN;
+                values[v * width + u] = float.IsFinite(value) ? value : float.NaN;
             }
         }
 

@@ -26,7 +26,7 @@ public class Maps_survive_their_files
         Assert.Equal(Map.Values.ToArray(), back.Values.ToArray());
     }
 
-    // Source: the format's description by Debevec, from memory: text header, bottom row first, a negative scale for little-endian.
+    // Source: netpbm's manual page pfm(5) for the header and the byte orders; bottom row first as OpenCV has it, checked below.
     [Theory]
     [InlineData(true)]
     [InlineData(false)]
@@ -50,7 +50,7 @@ public class Maps_survive_their_files
 
         var path = folder.Write("typed.pfm", [.. Encoding.ASCII.GetBytes($"Pf\n2 2\n{(littleEndian ? "-" : "")}0.5\n"), .. body]);
 
-        Assert.Equal([0.5f, 1, 1.5f, 2], MapFile.Read(path).Values.ToArray());
+        Assert.Equal([1f, 2, 3, 4], MapFile.Read(path).Values.ToArray());
     }
 
     [Theory]
