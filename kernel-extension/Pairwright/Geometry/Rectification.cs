@@ -8,6 +8,8 @@ namespace Pairwright.Geometry;
 /// </remarks>
 public sealed class Rectification
 {
+    private readonly Matrix3x3 leftFromRectified;
+    private readonly Matrix3x3 rightFromRectified;
     private readonly Lazy<(double Left, double Right)> areaKept;
 
     /// <summary>Makes a rectification from its parts.</summary>
@@ -28,6 +30,8 @@ public sealed class Rectification
         }
 
         (Rig, Geometry, Fit) = (rig, geometry, fit);
+        leftFromRectified = geometry.LeftFromRectified;
+        rightFromRectified = rig.RightFromLeft.Rotation * geometry.LeftFromRectified;
         areaKept = new(() => (ShareKept(View.Left), ShareKept(View.Right)));
     }
 
@@ -73,7 +77,7 @@ public sealed class Rectification
     /// <summary>The rectified pixel of an ideal one; NaN at 90° or more from the rectified axis.</summary>
     public RectifiedPixel Rectify(View view, IdealPixel pixel)
     {
-        var direction = RectifiedFromCamera(view) * Rig[view].Matrix.Direction(pixel);
+        var direction = CameraFromRectified(view).Transpose * Rig[view].Matrix.Direction(pixel);
         return direction.Z > 0
             ? new(Geometry.FocalPixels * direction.X / direction.Z + CentreU(view), Geometry.FocalPixels * direction.Y / direction.Z + Geometry.CentreV)
             : new(double.NaN, double.NaN);
@@ -105,16 +109,19 @@ public sealed class Rectification
     /// <summary>For each rectified pixel where in a view's raw picture its level is looked up; NaN where the camera did not see it.</summary>
     public SamplingMap SamplingMapOf(View view)
     {
-        var (size, raw) = (Geometry.Size, Rig[view].Size);
+        var (size, camera, turn) = (Geometry.Size, Rig[view], CameraFromRectified(view));
         var (columns, rows) = (new float[size.Area], new float[size.Area]);
         Parallel.For(0, size.Height, v =>
         {
+            // Along a row the direction grows by the same step from pixel to pixel.
+            var start = CameraDirection(view, new(0, v));
+            var step = turn.Transpose.Row1 / Geometry.FocalPixels;
             for (var u = 0; u < size.Width; u++)
             {
-                var at = RawFromRectified(view, new(u, v));
-                var seen = raw.Contains(at.U, at.V);
-                columns[v * size.Width + u] = seen ? (float)at.U : float.NaN;
-                rows[v * size.Width + u] = seen ? (float)at.V : float.NaN;
+                var at = camera.Project(start + u * step);
+                var seen = camera.Size.Contains(at.U, at.V);
+                columns[(long)v * size.Width + u] = seen ? (float)at.U : float.NaN;
+                rows[(long)v * size.Width + u] = seen ? (float)at.V : float.NaN;
             }
         });
         return new(view, size, columns, rows);
@@ -122,11 +129,10 @@ public sealed class Rectification
 
     private double CentreU(View view) => view == View.Left ? Geometry.CentreU : Geometry.CentreU + Geometry.OffsetPixels;
 
-    private Matrix3x3 RectifiedFromCamera(View view) =>
-        view == View.Left ? Geometry.LeftFromRectified.Transpose : Geometry.LeftFromRectified.Transpose * Rig.RightFromLeft.Rotation.Transpose;
+    private Matrix3x3 CameraFromRectified(View view) => view == View.Left ? leftFromRectified : rightFromRectified;
 
     private Vector3D CameraDirection(View view, RectifiedPixel pixel) =>
-        RectifiedFromCamera(view).Transpose
+        CameraFromRectified(view)
         * new Vector3D((pixel.U - CentreU(view)) / Geometry.FocalPixels, (pixel.V - Geometry.CentreV) / Geometry.FocalPixels, 1);
 
     private double ShareKept(View view)

@@ -124,15 +124,15 @@ public sealed class TriangulationTests
     }
 
     /// <summary>
-    /// Reference: Monte Carlo (JCGM 101). With N = 4,000 draws (N−1)·s²/σ² is chi-squared; each of the variances must lie within its
-    /// 99.9 % interval, over 10 variances (a false alarm in 1 % of seeds; the seed is fixed), and correlations within 0.06.
+    /// Reference: Monte Carlo (JCGM 101). With N = 2,000 draws (N−1)·s²/σ² is chi-squared; each of the variances must lie within its
+    /// 99.9 % interval, over 6 variances (a false alarm in 0.6 % of seeds; the seed is fixed), and correlations within 0.09 (four of their deviations).
     /// </summary>
     [Theory]
     [InlineData(true)]
     [InlineData(false)]
     public void The_random_covariance_agrees_with_Monte_Carlo(bool linear)
     {
-        const int draws = 4000;
+        const int draws = 2000;
         const double sigma = 0.05;
         var random = new Random(65);
         var (low, high) = (ChiSquared.InvCDF(draws - 1, 0.0005) / (draws - 1), ChiSquared.InvCDF(draws - 1, 0.9995) / (draws - 1));
@@ -141,11 +141,7 @@ public sealed class TriangulationTests
             // Near enough for the law of propagation: at far depths the distribution leans.
             var point = 8 * rig.BaselineMm / points[0].Z * points[0];
             var raw = Matches.RawOf(rig, point);
-            if (!double.IsFinite(raw.Right.U))
-            {
-                continue;
-            }
-
+            Assert.True(double.IsFinite(raw.Right.U));
             var expected = Of(raw).RandomCovariance(sigma);
             var drawn = Matrix<double>.Build.Dense(draws, 3);
             for (var i = 0; i < draws; i++)
@@ -162,7 +158,7 @@ public sealed class TriangulationTests
                 for (var j = 0; j < i; j++)
                 {
                     var scale = Math.Sqrt(expected[i, i] * expected[j, j]);
-                    Assert.InRange((observed[i, j] - expected[i, j]) / scale, -0.06, 0.06);
+                    Assert.InRange((observed[i, j] - expected[i, j]) / scale, -0.09, 0.09);
                 }
             }
 
@@ -176,7 +172,7 @@ public sealed class TriangulationTests
     [Fact]
     public void The_common_covariance_agrees_with_Monte_Carlo_over_the_rig()
     {
-        const int draws = 4000;
+        const int draws = 2000;
         var random = new Random(66);
         var root = Matrix<double>.Build.Dense(RigParameters.Count, RigParameters.Count);
         double[] sigma = [.. CameraSigmas(), .. CameraSigmas(), 1e-4, 2e-4, 1e-4, 0.02, 0.02, 0.05];
