@@ -20,6 +20,11 @@ internal sealed class CornerPointSource(Rig rig, IReadOnlyList<RawPixel> lefts, 
     {
         var (l, r) = (lefts[index], rights[index]);
         var sum = 0 * Matrix3x3.Identity;
+        if (sigmaPx == 0)
+        {
+            return sum;
+        }
+
         foreach (var (du, dv) in new (double, double)[] { (StepPx, 0), (0, StepPx) })
         {
             Add(Meet(new(l.U + du, l.V + dv), r) - Meet(new(l.U - du, l.V - dv), r));

@@ -5,6 +5,8 @@ namespace Pairwright.Measurement;
 /// <summary>Writes values and uncertainties with sensible digits.</summary>
 internal static class MeasuredText
 {
+    private const string Unknown = "unknown";
+
     /// <summary>Value ± standard uncertainty with both parts.</summary>
     public static string Standard(MeasuredValue measured)
     {
@@ -17,7 +19,7 @@ internal static class MeasuredText
         // A part that is known is shown even where the whole is not.
         var known = double.IsNaN(u) ? new[] { measured.RandomSigma, measured.CommonSigma }.FirstOrDefault(part => part > 0, double.NaN) : u;
         var decimals = Decimals(known);
-        var total = double.IsNaN(u) ? "unknown" : WithUnit(Fixed(u, decimals), measured.Unit);
+        var total = double.IsNaN(u) ? Unknown : WithUnit(Fixed(u, decimals), measured.Unit);
         return $"{WithUnit(Fixed(measured.Value, decimals), measured.Unit)} ± {total} (1 σ; random {Fixed(measured.RandomSigma, decimals)}, common {Fixed(measured.CommonSigma, decimals)})";
     }
 
@@ -31,13 +33,13 @@ internal static class MeasuredText
         }
 
         var decimals = Decimals(expanded);
-        var total = double.IsNaN(expanded) ? "unknown" : WithUnit(Fixed(expanded, decimals), measured.Unit);
+        var total = double.IsNaN(expanded) ? Unknown : WithUnit(Fixed(expanded, decimals), measured.Unit);
         return $"{WithUnit(Fixed(measured.Value, decimals), measured.Unit)} ± {total} (k = {Plain(coverageFactor)})";
     }
 
     /// <summary>A number and its unit; a pure number stands alone.</summary>
     public static string WithUnit(string number, string unit) =>
-        unit switch { "" => number, "°" => number + unit, _ => $"{number} {unit}" };
+        unit switch { _ when number == Unknown => number, "" => number, "°" => number + unit, _ => $"{number} {unit}" };
 
     /// <summary>A number without uncertainty, six significant digits at most.</summary>
     public static string Plain(double value) => double.IsNaN(value) ? "none" : value.ToString("G6", CultureInfo.InvariantCulture);
@@ -63,7 +65,7 @@ internal static class MeasuredText
     {
         if (double.IsNaN(value))
         {
-            return "unknown";
+            return Unknown;
         }
 
         if (decimals is not { } places || !double.IsFinite(value))

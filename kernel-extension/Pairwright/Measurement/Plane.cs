@@ -18,25 +18,32 @@ internal readonly record struct Plane(Vector3D Point, Vector3D Normal)
         }
 
         mean /= total;
-        var (axes, spread) = Scatter(points, weight, mean, total);
+        var (axes, _) = Scatter(points, weight, mean, total);
+        var normal = new Vector3D(axes[0, 0], axes[1, 0], axes[2, 0]);
+        return new(mean, normal.Dot(mean) > 0 ? -normal : normal);
+    }
+
+    /// <summary>Demands points that fix a plane.</summary>
+    /// <exception cref="UserErrorException">They lie on a line or at one place.</exception>
+    public static void RequireSpread(IReadOnlyList<Vector3D> points)
+    {
+        var mean = points.Aggregate(default(Vector3D), (sum, point) => sum + point) / points.Count;
+        var (_, spread) = Scatter(points, _ => 1, mean, points.Count);
         if (!(spread[1] > 1e-12 * spread[2]))
         {
             throw new UserErrorException("The points lie on a line or at one place, so no plane goes through them; select a wider region.");
         }
-
-        var normal = new Vector3D(axes[0, 0], axes[1, 0], axes[2, 0]);
-        return new(mean, normal.Dot(mean) > 0 ? -normal : normal);
     }
 
     /// <summary>Signed height of a point towards the camera.</summary>
     public double Height(Vector3D point) => Normal.Dot(point - Point);
 
-    /// <summary>A direction laid into the plane, of length one; nothing where it stands upright on it.</summary>
+    /// <summary>A direction laid into the plane, of length one; nothing where it stands within 6° of upright on it.</summary>
     public Vector3D? InPlane(Vector3D direction)
     {
         var along = direction.Normalized;
         var laid = along - along.Dot(Normal) * Normal;
-        return laid.Norm > 1e-3 ? laid.Normalized : null;
+        return laid.Norm > 0.1 ? laid.Normalized : null;
     }
 
     /// <summary>The principal directions of points in ascending order of scatter, as columns, and their variances.</summary>

@@ -119,16 +119,21 @@ public sealed class PlaneFit
             throw new UserErrorException($"A plane takes at least three points, but there are {points.Count}; select a region with more matches.");
         }
 
-        var plane = Plane.To(points.Positions, _ => 1);
+        // Wrong matches lie along the viewing rays, often farther than the region is wide: the first plane is taken as heights towards the
+        // camera over a plane that faces it, where they cannot turn it on edge; orthogonal distances follow once they have no say.
+        Plane.RequireSpread(points.Positions);
+        var centroid = points.Centroid;
+        var plane = new Plane(centroid, -centroid.Normalized);
+        var sigmas = Sigmas(points, plane.Normal);
         var blocks = points.Blocks();
-        var (axisX, axisY, fit) = Robust(points, plane, blocks);
+        var (axisX, axisY, fit) = Robust(points, plane, sigmas, blocks, null);
 
         // The robust fit moves the plane, the moved plane changes the orthogonal distances: a few turns settle it.
         for (var turn = 0; turn < 10; turn++)
         {
             var weights = fit.Weights;
             plane = Plane.To(points.Positions, i => weights[i]);
-            (axisX, axisY, fit) = Robust(points, plane, blocks);
+            (axisX, axisY, fit) = Robust(points, plane, sigmas, blocks, turn == 0 ? null : fit.Scale);
             if (fit.IsSettled)
             {
                 break;
@@ -162,7 +167,8 @@ public sealed class PlaneFit
     private double HeightSigma(Vector3D point) =>
         Math.Sqrt(Math.Max(0, Quadratic(covariance, [1, axisX.Dot(point - Centroid), axisY.Dot(point - Centroid)])));
 
-    private static (Vector3D X, Vector3D Y, RobustFit Fit) Robust(MeasuredPoints points, Plane plane, PointBlocks blocks)
+    private static (Vector3D X, Vector3D Y, RobustFit Fit) Robust(
+        MeasuredPoints points, Plane plane, (double[] Relative, double[]? Stated) sigmas, PointBlocks blocks, double? knownScale)
     {
         var x = plane.InPlane(new(1, 0, 0)) ?? plane.InPlane(new(0, 1, 0))!.Value;
         var y = plane.Normal.Cross(x);
@@ -175,8 +181,7 @@ public sealed class PlaneFit
             heights[i] = plane.Normal.Dot(offset);
         }
 
-        var (relative, stated) = Sigmas(points, plane.Normal);
-        return (x, y, RobustFit.Of(rows, 3, heights, relative, stated, blocks));
+        return (x, y, RobustFit.Of(rows, 3, heights, sigmas.Relative, sigmas.Stated, blocks, knownScale));
     }
 
     // The covariance of the normal's random part, in the left camera's frame, radians squared.

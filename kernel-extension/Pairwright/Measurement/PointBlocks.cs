@@ -36,25 +36,40 @@ internal sealed class PointBlocks
             return new([.. Enumerable.Range(0, places.Count)], places.Count, 1, $"the scatter of {places.Count} independent points");
         }
 
+        var (leastU, leastV) = (places.Min(place => place.U), places.Min(place => place.V));
+        var (width, height) = (places.Max(place => place.U) - leastU + 1, places.Max(place => place.V) - leastV + 1);
         for (var lengths = WidestInLengths; ; lengths -= 0.5)
         {
-            var side = lengths * correlationLength;
-            var blocks = new Dictionary<(int, int), int>();
-            var of = new int[places.Count];
-            for (var i = 0; i < of.Length; i++)
+            // As many whole blocks as fit, widened to fill the region: slivers at its border would be blocks in name only.
+            var (columns, rows) = (Fitting(width, lengths * correlationLength), Fitting(height, lengths * correlationLength));
+            if (columns * rows >= EnoughBlocks || lengths <= 1)
             {
-                var key = ((int)Math.Floor(places[i].U / side), (int)Math.Floor(places[i].V / side));
-                if (!blocks.TryGetValue(key, out of[i]))
-                {
-                    blocks[key] = of[i] = blocks.Count;
-                }
-            }
-
-            if (blocks.Count >= EnoughBlocks || lengths <= 1)
-            {
-                var kept = 1 - 1 / (3 * lengths);
-                return new(of, blocks.Count, 1 / (kept * kept), $"the scatter of {blocks.Count} blocks of {side:0} × {side:0} px");
+                var (of, count) = Number([.. places.Select(place => (int)((place.V - leastV) * rows / height) * columns + (int)((place.U - leastU) * columns / width))]);
+                var (sideU, sideV) = (width / columns, height / rows);
+                var kept = Kept(sideU / correlationLength) * Kept(sideV / correlationLength);
+                return new(of, count, 1 / kept, $"the scatter of {count} blocks of {sideU:0} × {sideV:0} px");
             }
         }
+    }
+
+    private static int Fitting(double extent, double side) => Math.Max(1, (int)(extent / side));
+
+    // A region narrower than the length is one block across it, which holds all there is.
+    private static double Kept(double lengths) => lengths < 1 ? 1 : 1 - 1 / (3 * lengths);
+
+    // Blocks that hold a point, numbered from 0.
+    private static (int[] Of, int Count) Number(int[] keys)
+    {
+        var numbers = new Dictionary<int, int>();
+        var of = Array.ConvertAll(keys, key =>
+        {
+            if (!numbers.TryGetValue(key, out var number))
+            {
+                numbers[key] = number = numbers.Count;
+            }
+
+            return number;
+        });
+        return (of, numbers.Count);
     }
 }

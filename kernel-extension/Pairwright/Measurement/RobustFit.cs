@@ -32,20 +32,21 @@ internal sealed class RobustFit
     private readonly double[] readings;
     private readonly double[] sigmas;
     private readonly double[] extents;
+    private readonly Lazy<(Matrix<double> Covariance, string Basis)> random;
 
-    private RobustFit(double[] rows, int terms, double[] readings, double[] sigmas, double[]? stated, PointBlocks blocks)
+    private RobustFit(double[] rows, int terms, double[] readings, double[] sigmas, double[]? stated, PointBlocks blocks, double? knownScale)
     {
         (this.rows, this.terms, this.readings, this.sigmas) = (rows, terms, readings, sigmas);
         extents = [.. Enumerable.Range(0, terms).Select(term => Enumerable.Range(0, readings.Length).Max(i => Math.Abs(rows[i * terms + term])))];
         Weights = Array.ConvertAll(sigmas, sigma => 1 / (sigma * sigma));
-        Coefficients = Solve(rows, terms, readings, Weights);
-        Scale = Iterate(HuberWeight, null);
-        Iterate(TukeyWeight, Scale);
-        (Covariance, Basis) = blocks.Count >= terms + LeastSpareBlocks
+        Coefficients = knownScale is null ? Solve(rows, terms, readings, Weights) : new double[terms];
+        Scale = knownScale ?? Iterate(HuberWeight, null, 1e-2);
+        Iterate(TukeyWeight, Scale, 1e-5);
+        random = new(() => blocks.Count >= terms + LeastSpareBlocks
             ? (Sandwich(blocks), blocks.Scatter)
             : stated is null
                 ? (Matrix<double>.Build.Dense(terms, terms, double.NaN), $"nothing: {blocks.Scatter} is too little, and no σ of disparity is stated")
-                : (FromStated(stated, blocks), $"the stated σ of the points, because {blocks.Scatter} is too little");
+                : (FromStated(stated, blocks), $"the stated σ of the points, because {blocks.Scatter} is too little"));
     }
 
     /// <summary>The parameters.</summary>
@@ -58,13 +59,13 @@ internal sealed class RobustFit
     public double Scale { get; }
 
     /// <summary>The random covariance of the parameters; NaN where nothing is known about it.</summary>
-    public Matrix<double> Covariance { get; }
+    public Matrix<double> Covariance => random.Value.Covariance;
 
     /// <summary>What the covariance rests on, as a phrase.</summary>
-    public string Basis { get; }
+    public string Basis => random.Value.Basis;
 
     /// <summary>Whether every term moves every reading by less than a share of the residuals' scale.</summary>
-    public bool IsSettled => Enumerable.Range(0, terms).All(term => Math.Abs(Coefficients[term]) * extents[term] < 1e-5 * Scale * sigmas[0] + ResolutionMm);
+    public bool IsSettled => Enumerable.Range(0, terms).All(term => Math.Abs(Coefficients[term]) * extents[term] < 1e-4 * Scale * sigmas[0] + ResolutionMm);
 
     private bool IsExact => Scale * sigmas[0] <= ResolutionMm;
 
@@ -75,8 +76,10 @@ internal sealed class RobustFit
     /// <param name="sigmas">The relative σ of each reading, above zero.</param>
     /// <param name="stated">The stated random σ of each reading, in millimetres; nothing where it is not known.</param>
     /// <param name="blocks">The blocks of readings.</param>
-    public static RobustFit Of(double[] rows, int terms, double[] readings, double[] sigmas, double[]? stated, PointBlocks blocks) =>
-        new(rows, terms, readings, sigmas, stated, blocks);
+    /// <param name="knownScale">The scale of the residuals where it is known and the solution is near zero, so that Huber's steps can be left out.</param>
+    public static RobustFit Of(
+        double[] rows, int terms, double[] readings, double[] sigmas, double[]? stated, PointBlocks blocks, double? knownScale = null) =>
+        new(rows, terms, readings, sigmas, stated, blocks, knownScale);
 
     /// <summary>The weighted least-squares solution.</summary>
     public static double[] Solve(double[] rows, int terms, double[] readings, double[] weights)
@@ -96,7 +99,7 @@ internal sealed class RobustFit
     }
 
     // Reweights and solves until nothing moves; returns the scale of the residuals.
-    private double Iterate(Func<double, double> weight, double? fixedScale)
+    private double Iterate(Func<double, double> weight, double? fixedScale, double tolerance)
     {
         var standard = new double[readings.Length];
         var scale = fixedScale ?? 0;
@@ -121,7 +124,7 @@ internal sealed class RobustFit
             var next = Solve(rows, terms, readings, Weights);
             var moved = next.Zip(Coefficients, (a, b) => Math.Abs(a - b)).Zip(extents, (change, extent) => change * extent).Max();
             Coefficients = next;
-            if (moved < 1e-6 * scale * sigmas[0])
+            if (moved < tolerance * scale * sigmas[0])
             {
                 break;
             }
