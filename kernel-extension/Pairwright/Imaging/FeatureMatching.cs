@@ -63,6 +63,16 @@ public static class FeatureMatching
         return FundamentalMatrix.FromMatches([.. pair.Rig is { } rig ? Ideal(rig, matches) : matches.Select(AsIdeal)], tolerancePx, seed);
     }
 
+    /// <summary>Whether the pair's pictures are swapped against its rig, told by <see cref="MatchFeatures"/> and <see cref="Rig.OrderOf"/>.</summary>
+    /// <param name="pair">The pair, with a rig whose cameras take pictures of one size.</param>
+    /// <exception cref="UserErrorException">The pair has no rig, or the pictures have no feature in common.</exception>
+    public static PairOrderCheck OrderFromFeatures(this StereoPair pair)
+    {
+        ArgumentNullException.ThrowIfNull(pair);
+        var rig = pair.Rig ?? throw new UserErrorException("The pair has no rig to hold its order against; read it with its rig.");
+        return rig.OrderOf(pair.MatchFeatures(mostFeatures: 1000));
+    }
+
     private static IEnumerable<IdealMatch> Ideal(Rig rig, IEnumerable<RawMatch> matches)
     {
         foreach (var match in matches)

@@ -46,6 +46,21 @@ public sealed class FeatureMatchingTests(ITestOutputHelper output)
         Assert.InRange(counts.Max() - counts.Min(), 0, 3);
     }
 
+    /// <summary>
+    /// The Aloe pair of Middlebury 2006, whose rows match and whose left and right are known. Its focal length and baseline (3740 px at three
+    /// times the size, 160 mm) are typed from memory; the order depends on neither.
+    /// </summary>
+    [SkippableFact]
+    public void A_swapped_real_pair_is_told_from_its_rig()
+    {
+        var (left, right) = (Picture.Read(OpenData.Find("aloe/aloeL.jpg")), Picture.Read(OpenData.Find("aloe/aloeR.jpg")));
+        var camera = new Camera(new(3740 / 3.0, 3740 / 3.0, left.Size.Width / 2.0, left.Size.Height / 2.0), left.Size);
+        var rig = new Rig(camera, camera, new(Matrix3x3.Identity, new(-160, 0, 0)));
+        Assert.Equal(PairOrder.AsNamed, new StereoPair(left, right, rig).OrderFromFeatures().Order);
+        Assert.Equal(PairOrder.Swapped, new StereoPair(right, left, rig).OrderFromFeatures().Order);
+        Assert.Throws<UserErrorException>(() => new StereoPair(left, right).OrderFromFeatures());
+    }
+
     /// <summary>Reference: Gaussian blobs drawn at known places; the same picture on both sides.</summary>
     [Fact]
     public void Features_lie_where_the_blobs_were_drawn()
