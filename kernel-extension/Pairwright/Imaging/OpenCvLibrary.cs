@@ -38,6 +38,8 @@ internal static partial class OpenCvLibrary
     {
         try
         {
+            // What goes wrong is said by our own sentences; the library's chatter would stand in reports and terminals.
+            Cv2.SetLogLevel(LogLevel.SILENT);
             return Cv2.GetVersionString() ?? "unknown";
         }
         catch (Exception fault) when (Explain(fault) is { } explained)

@@ -115,6 +115,11 @@ internal static class PictureFile
     /// <summary>Decodes what OpenCV decodes, with its own channel order and depth.</summary>
     internal static Mat DecodeMat(byte[] content, PictureHeader header, string path)
     {
+        if (header.Format == PictureFormat.Tiff && !TiffParts.AreWhole(content))
+        {
+            throw Undecodable(path);
+        }
+
         OpenCvLibrary.Require();
         Mat mat;
         try

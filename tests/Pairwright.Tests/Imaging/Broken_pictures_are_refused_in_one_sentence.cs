@@ -108,6 +108,27 @@ public class Broken_pictures_are_refused_in_one_sentence
         Refusal(folder.Write("wild.tif", content));
     }
 
+    // Found by trying: OpenCV alone reads these as black pictures. Numbers of compressions from TIFF revision 6.0 and its supplements.
+    [Theory]
+    [InlineData(1, 8)]
+    [InlineData(5, 8)]
+    [InlineData(5, 16)]
+    [InlineData(8, 8)]
+    [InlineData(8, 16)]
+    [InlineData(32946, 8)]
+    [InlineData(32773, 8)]
+    [InlineData(7, 8)]
+    [InlineData(4, 8)]
+    [InlineData(999, 8)]
+    [InlineData(50000, 8)]
+    public void A_tiff_whose_pixels_do_not_unpack(int compression, int bits)
+    {
+        using var folder = new TestFolder();
+        var noise = new byte[500];
+        new Random(3).NextBytes(noise);
+        Assert.Contains("cannot be decoded", Refusal(folder.Write("noise.tif", Patterns.Tiff(40, 40, bits, noise, compression: compression))));
+    }
+
     [Fact]
     public void A_tiff_that_stores_white_as_zero_in_sixteen_bits()
     {

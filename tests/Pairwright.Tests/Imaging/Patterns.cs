@@ -24,15 +24,15 @@ internal static class Patterns
             colour: colour ? Levels(3 * width * height, 1 << bits, seed + 1) : null);
     }
 
-    /// <summary>An uncompressed single-channel TIFF, typed byte by byte after TIFF revision 6.0.</summary>
-    public static byte[] Tiff(int width, int height, int bitsPerSample, byte[] samples, int photometric = 1)
+    /// <summary>A single-channel TIFF of one strip, typed byte by byte after TIFF revision 6.0.</summary>
+    public static byte[] Tiff(int width, int height, int bitsPerSample, byte[] samples, int photometric = 1, int compression = 1)
     {
         var file = new List<byte>();
         void Short(int value) => file.AddRange([(byte)value, (byte)(value >> 8)]);
         void Long(int value) => file.AddRange(BitConverter.GetBytes(value));
         (int Tag, int Type, int Value)[] entries =
         [
-            (256, 4, width), (257, 4, height), (258, 3, bitsPerSample), (259, 3, 1), (262, 3, photometric),
+            (256, 4, width), (257, 4, height), (258, 3, bitsPerSample), (259, 3, compression), (262, 3, photometric),
             (273, 4, 8 + 2 + 9 * 12 + 4), (277, 3, 1), (278, 4, height), (279, 4, samples.Length),
         ];
         file.AddRange("II"u8.ToArray());
