@@ -27,6 +27,10 @@ internal sealed class Chart
 
     public bool YDown { get; }
 
+    public Axis XAxis => x;
+
+    public Axis YAxis => y;
+
     /// <summary>The size of the plot, without titles and labels.</summary>
     public (double Width, double Height) Plot => (plot.Width, plot.Height);
 
