@@ -21,13 +21,14 @@ public static class Extension
         }
     }
 
-    /// <summary>One line for each namespace of the library, so that a cell needs none.</summary>
+    /// <summary>One line for each namespace of the library and one for the drawings, so that a cell needs none.</summary>
     internal static string Usings() => string.Join('\n', Namespaces().Select(name => $"using {name};"));
 
     private static IEnumerable<string> Namespaces() =>
         typeof(VerdictRecord).Assembly.GetExportedTypes()
             .Select(type => type.Namespace)
             .OfType<string>()
+            .Append(typeof(PairDrawings).Namespace!)
             .Distinct()
             .Order(StringComparer.Ordinal);
 }

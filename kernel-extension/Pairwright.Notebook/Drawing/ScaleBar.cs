@@ -5,14 +5,14 @@ namespace Pairwright.Notebook.Drawing;
 /// <summary>The bar beside a coloured map that says which colour stands for which value, with the unit.</summary>
 internal static class ScaleBar
 {
-    public const double Width = 74;
+    public const double Width = 66;
 
     /// <summary>An upright bar, the largest value on top, and the stripes that stand for no value beneath it.</summary>
-    public static Svg Upright(Ramp ramp, double least, double most, string unit, double height)
+    public static Svg Upright(Ramp ramp, double least, double most, string unit, double height, bool withNoValue = true)
     {
         const double bar = 16;
         const double top = 24;
-        var length = height - top - 40;
+        var length = height - top - (withNoValue ? 40 : 8);
         var drawing = new Svg(Width, height, $"Scale from {Numbers.Significant(least, 4)} to {Numbers.Significant(most, 4)} {unit}");
         drawing.Text(0, 13, unit, size: 11, colour: Ink.Quiet);
         drawing.Image(0, top, bar, length, Raster.From(1, 256, (_, v) => ramp.At(1 - v / 255.0)));
@@ -23,6 +23,11 @@ internal static class ScaleBar
         {
             var y = top + (1 - (tick - least) / (most - least)) * length;
             drawing.Line(bar, y, bar + 4, y, new(Ink.Quiet)).Text(bar + 7, y + 3.5, Ticks.Label(tick, step), size: 10.5, colour: Ink.Quiet);
+        }
+
+        if (!withNoValue)
+        {
+            return drawing;
         }
 
         drawing.Image(0, top + length + 12, bar, bar, Raster.From(16, 16, ColourScale.NoValue));

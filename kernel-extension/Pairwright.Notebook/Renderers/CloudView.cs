@@ -5,23 +5,30 @@ using Pairwright.Notebook.Drawing;
 namespace Pairwright.Notebook.Renderers;
 
 /// <summary>A cloud seen along one direction without perspective: nearest points in front, lit from the upper left.</summary>
-internal sealed record CloudView(string Heading, string RightAxis, string DownAxis, Vector3D Right, Vector3D Down, bool WithPictureColours)
+internal sealed record CloudView(string Heading, string RightAxis, string UprightAxis, Vector3D Right, Vector3D Upright)
 {
-    private Vector3D Away => Right.Cross(Down);
+    /// <summary>Whether the upright axis grows downwards, as picture rows do.</summary>
+    public bool GrowsDown { get; init; } = true;
+
+    /// <summary>Whether the points keep the picture's colours, where they have any.</summary>
+    public bool WithPictureColours { get; init; }
+
+    private Vector3D Away => GrowsDown ? Right.Cross(Upright) : -Right.Cross(Upright);
 
     public Svg Draw(PointCloud cloud, double width = 420, double height = 300)
     {
         var across = cloud.Positions.Select(p => p.Dot(Right)).ToArray();
-        var down = cloud.Positions.Select(p => p.Dot(Down)).ToArray();
+        var upright = cloud.Positions.Select(p => p.Dot(Upright)).ToArray();
         var away = cloud.Positions.Select(p => p.Dot(Away)).ToArray();
-        var chart = Chart.Isometric(Heading, Around(RightAxis, across), Around(DownAxis, down), width, height, yDown: true);
+        var chart = Chart.Isometric(Heading, Around(RightAxis, across), Around(UprightAxis, upright), width, height, GrowsDown);
         var (w, h) = ((int)chart.Plot.Width, (int)chart.Plot.Height);
         var nearest = new int[w * h];
         Array.Fill(nearest, -1);
         var (x, y) = (chart.XAxis, chart.YAxis);
         for (var i = 0; i < across.Length; i++)
         {
-            Splat(nearest, w, h, (int)(x.Share(across[i]) * w), (int)(y.Share(down[i]) * h), i, away);
+            var share = y.Share(upright[i]);
+            Splat(nearest, w, h, (int)(x.Share(across[i]) * w), (int)((GrowsDown ? share : 1 - share) * h), i, away);
         }
 
         return chart.Image(Shaded(cloud, nearest, w, h, away, (x.Most - x.Least) / w)).ToSvg();

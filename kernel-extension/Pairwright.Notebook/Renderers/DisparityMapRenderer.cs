@@ -55,8 +55,8 @@ internal sealed class DisparityMapRenderer : Renderer<DisparityMap>
             ("time", Numbers.Significant(map.Elapsed.TotalSeconds, 3, "s")));
         card.Row(
             MapDrawings.Coloured("Disparity", map.Disparity, Ramp.Values, range, "px", canvas => canvas.Line(-0.5, row, map.Size.Width - 0.5, row, new("#ffffff", 1, "5 4"))),
-            PictureCanvas.Of("Left picture", map.Pair.Left, 400).ToSvg());
-        card.Row(Labels(map), MapDrawings.Coloured("Confidence: how clearly the best stands out", map.Confidence, Ramp.Shares, (0, 1), "0 to 1"));
+            MapDrawings.Coloured("Confidence: how clearly the best stands out", map.Confidence, Ramp.Shares, (0, 1), "0 to 1"));
+        card.Row(Labels(map), PictureCanvas.Of("Left picture", map.Pair.Left, MapDrawings.Width).ToSvg());
         card.Row(
             MapDrawings.Histogram("How often each disparity occurs", map.Disparity, "disparity, px", map.Range.Least, map.Range.Most),
             MapDrawings.Profile($"Disparity along row {row} (dashed in the map)", map.Disparity, row, "px", range));
@@ -71,7 +71,7 @@ internal sealed class DisparityMapRenderer : Renderer<DisparityMap>
 
     private static Svg Labels(DisparityMap map)
     {
-        const double width = 400;
+        const double width = MapDrawings.Width;
         var (w, h) = Pictures.Fitted(map.Size.Width, map.Size.Height, (int)width);
         var raster = Raster.From(w, h, (u, v) =>
         {
@@ -80,7 +80,7 @@ internal sealed class DisparityMapRenderer : Renderer<DisparityMap>
             return (outcome.Red, outcome.Green, outcome.Blue);
         });
         var picture = new PictureCanvas("What became of each pixel", map.Size, raster, width).ToSvg();
-        var drawing = new Svg(picture.Width + 156, picture.Height, "What became of each pixel").Place(0, 0, picture);
+        var drawing = new Svg(picture.Width + 140, picture.Height, "What became of each pixel").Place(0, 0, picture);
         var y = 30.0;
         foreach (var (label, name, red, green, blue) in Outcomes.Where(outcome => map.Labels.Share(outcome.Label) > 0))
         {

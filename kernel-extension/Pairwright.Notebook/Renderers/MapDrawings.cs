@@ -6,6 +6,9 @@ namespace Pairwright.Notebook.Renderers;
 /// <summary>Drawings that disparity and depth maps share.</summary>
 internal static class MapDrawings
 {
+    /// <summary>The width of a map's drawing: two with their scale bars fit beside one another.</summary>
+    public const double Width = 360;
+
     /// <summary>The range of colours: what the middle 98 % of the values span, so that a few wrong ones do not wash the picture out.</summary>
     public static (double Least, double Most) Range(ScalarMap map, double lowShare = 0.01, double highShare = 0.99)
     {
@@ -14,7 +17,7 @@ internal static class MapDrawings
     }
 
     /// <summary>A map in colours with its scale bar; shapes may be drawn over it.</summary>
-    public static Svg Coloured(string heading, ScalarMap map, Ramp ramp, (double Least, double Most) range, string unit, Action<PictureCanvas>? over = null, double width = 400)
+    public static Svg Coloured(string heading, ScalarMap map, Ramp ramp, (double Least, double Most) range, string unit, Action<PictureCanvas>? over = null, double width = Width)
     {
         var canvas = new PictureCanvas(heading, map.Size, Pictures.Coloured(map, ramp, range.Least, range.Most, (int)width), width);
         over?.Invoke(canvas);

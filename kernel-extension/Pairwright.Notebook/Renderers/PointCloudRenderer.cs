@@ -28,21 +28,21 @@ internal sealed class PointCloudRenderer : Renderer<PointCloud>
             ("points", drawn.Count < cloud.Count ? $"{cloud.Count} ({drawn.Count} drawn)" : $"{cloud.Count}"),
             ("box", Box(cloud)),
             ("median σ along the ray, random part", cloud.SigmaMm.IsEmpty ? "not known" : Numbers.Significant(MedianSigma(cloud), 2, "mm")));
-        card.Row(Views(cloud).Select(view => view.Draw(drawn)));
+        card.Row(Views().Select(view => view.Draw(drawn)));
         card.Caption("Parallel projections; equal scale on both axes; the outermost half percent of points on each side is cut off. Colours run with the distance from the viewer, light in front.");
         return card.From(cloud.Provenance);
     }
 
-    private static IEnumerable<CloudView> Views(PointCloud cloud)
+    private static IEnumerable<CloudView> Views()
     {
         Vector3D x = new(1, 0, 0), y = new(0, 1, 0), z = new(0, 0, 1);
-        yield return new("From the front, as the camera sees it", "X, mm", "Y, mm", x, y, !cloud.Rgb.IsEmpty);
-        yield return new("From above", "X, mm", "Z up, mm (negative)", x, -z, false);
-        yield return new("From the right side", "Z, mm", "Y, mm", z, y, false);
+        yield return new("From the front, as the camera sees it", "X, mm", "Y, mm", x, y) { WithPictureColours = true };
+        yield return new("From above", "X, mm", "Z, mm", x, z) { GrowsDown = false };
+        yield return new("From the right side", "Z, mm", "Y, mm", z, y);
 
         // Turned about the vertical, then tipped towards the viewer.
         var turn = Rotation.FromVector(new(0.6, 0, 0)) * Rotation.FromVector(new(0, 0, 0.5));
-        yield return new("At a slant", "mm", "mm", turn.Row1, turn.Row2, false);
+        yield return new("At a slant", "mm", "mm", turn.Row1, turn.Row2);
     }
 
     private static string Box(PointCloud cloud)

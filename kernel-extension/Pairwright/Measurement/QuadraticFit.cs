@@ -27,6 +27,12 @@ public sealed class QuadraticFit
     /// <summary>The points that the surface was fitted to.</summary>
     public MeasuredPoints Points { get; }
 
+    /// <summary>Where u and v are zero, on the plane that heights are counted from, in the left camera's own frame, in millimetres.</summary>
+    public Vector3D Origin => variants.Nominal.Plane.Point;
+
+    /// <summary>The direction v along, in the left camera's own frame, of length one.</summary>
+    public Vector3D Along => variants.Nominal.V;
+
     /// <summary>The direction u across, in the left camera's own frame, of length one.</summary>
     public Vector3D Across { get; }
 
