@@ -59,6 +59,11 @@ internal sealed class YamlEntry
     public YamlEntry? Optional(string name) =>
         Mapping().Children.TryGetValue(new YamlScalarNode(name), out var child) ? new(file, place.Length == 0 ? name : $"{place}.{name}", child) : null;
 
+    /// <summary>The named entries of a mapping whose names are free.</summary>
+    public IEnumerable<(string Name, YamlEntry Entry)> Named() =>
+        Mapping().Children.Keys.Select(key => (key as YamlScalarNode)?.Value ?? throw Wrong("has a name that is not a word; correct it", key))
+            .Select(name => (name, Required(name)));
+
     /// <summary>The entry as text.</summary>
     public string Text() => node is YamlScalarNode { Value: { } text } ? text : throw Wrong("must be a word; correct it");
 
