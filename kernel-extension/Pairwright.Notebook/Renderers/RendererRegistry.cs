@@ -18,6 +18,7 @@ internal static class RendererRegistry
         new DepthMapRenderer(),
         new PointCloudRenderer(),
         new MeasuredPointsRenderer(),
+        new NumberSpreadRenderer(),
         new PlaneFitRenderer(),
         new QuadraticFitRenderer(),
         new RigCalibrationRenderer(),
