@@ -1,10 +1,38 @@
+using Pairwright.Simulation;
+using Spectre.Console;
 using Spectre.Console.Cli;
 
 namespace Pairwright.Runner.Commands;
 
 /// <summary>Writes the demo captures.</summary>
-internal sealed class DemoDataCommand : Command<DemoDataSettings>
+internal sealed class DemoDataCommand(IAnsiConsole console) : AsyncCommand<DemoDataSettings>
 {
-    public override int Execute(CommandContext context, DemoDataSettings settings, CancellationToken cancellationToken) =>
-        throw new BadUsageException("demo-data is not there yet: this build has no simulator.");
+    // What a shell expects of a program that was interrupted: 128 + SIGINT.
+    private const int Interrupted = 130;
+
+    public override async Task<int> ExecuteAsync(CommandContext context, DemoDataSettings settings, CancellationToken cancellationToken)
+    {
+        try
+        {
+            await console.Progress().StartAsync(async view =>
+            {
+                var task = view.AddTask("captures of Tarn Hollow", maxValue: 1);
+                await Task.Run(() => DemoData.Write(settings.Folder, new Share(task), cancellationToken), cancellationToken);
+            });
+        }
+        catch (OperationCanceledException)
+        {
+            console.WriteLine($"Stopped; what was written to {settings.Folder} is whole, but not all of the demo: run the command again.");
+            return Interrupted;
+        }
+
+        console.WriteLine($"The demo is in {settings.Folder}; its README.md tells what is what.");
+        return ExitCode.AllMet;
+    }
+
+    // Reports on the calling thread: Progress<T> would post it to a thread pool and let the last step come after the end.
+    private sealed class Share(ProgressTask task) : IProgress<double>
+    {
+        public void Report(double value) => task.Value = value;
+    }
 }
