@@ -57,7 +57,7 @@ public sealed class RigCalibration
     public required ImmutableArray<string> Advice { get; init; }
 
     /// <summary>The rule by which a view is called outlying, in words.</summary>
-    public static string OutlyingRule => throw new NotImplementedException();
+    public static string OutlyingRule => Outliers.Rule;
 
     /// <summary>Calibrates from a folder of left and right captures.</summary>
     /// <param name="folder">A folder laid out as <c>StereoPair.ReadFolder</c> takes it, such as left01.jpg … and right01.jpg ….</param>
@@ -68,7 +68,7 @@ public sealed class RigCalibration
     /// <exception cref="UserErrorException">The folder holds no pairs, sizes differ, or fewer than four views show the whole board.</exception>
     public static RigCalibration FromBoards(
         string folder, Board board, CalibrationModel? model = null, IProgress<double>? progress = null, CancellationToken cancellation = default) =>
-        throw new NotImplementedException();
+        FromBoards(StereoPair.ReadFolder(folder), board, model, progress, cancellation);
 
     /// <summary>Calibrates from captures.</summary>
     /// <param name="pairs">One pair per pose of the board.</param>
@@ -78,8 +78,22 @@ public sealed class RigCalibration
     /// <param name="cancellation">Stops the work.</param>
     /// <exception cref="UserErrorException">Sizes differ, or fewer than four views show the whole board.</exception>
     public static RigCalibration FromBoards(
-        IReadOnlyList<StereoPair> pairs, Board board, CalibrationModel? model = null, IProgress<double>? progress = null, CancellationToken cancellation = default) =>
-        throw new NotImplementedException();
+        IReadOnlyList<StereoPair> pairs, Board board, CalibrationModel? model = null, IProgress<double>? progress = null, CancellationToken cancellation = default)
+    {
+        ArgumentNullException.ThrowIfNull(pairs);
+        ArgumentNullException.ThrowIfNull(board);
+        RequireOneSize(pairs);
+        var views = new BoardView[pairs.Count];
+        var done = 0;
+        Parallel.For(0, pairs.Count, new ParallelOptions { CancellationToken = cancellation }, i =>
+        {
+            views[i] = FindBoard(pairs[i], pairs[i].Name, board);
+            progress?.Report(FindingShare * Interlocked.Increment(ref done) / pairs.Count);
+        });
+        var provenance = pairs.Skip(1).Aggregate(pairs[0].Provenance, (all, pair) => all.With(pair.Provenance));
+        return new CalibrationTask(board, model ?? CalibrationModel.FiveTerms, pairs[0].Left.Size, pairs[0].Right.Size, provenance)
+            .Run(views, progress is null ? null : new LaterShare(progress), cancellation);
+    }
 
     /// <summary>Calibrates from corners that were found before.</summary>
     /// <param name="corners">One entry per pose of the board.</param>
@@ -97,6 +111,65 @@ public sealed class RigCalibration
         PictureSize rightSize,
         CalibrationModel? model = null,
         IProgress<double>? progress = null,
-        CancellationToken cancellation = default) =>
-        throw new NotImplementedException();
+        CancellationToken cancellation = default)
+    {
+        ArgumentNullException.ThrowIfNull(corners);
+        ArgumentNullException.ThrowIfNull(board);
+        foreach (var view in corners)
+        {
+            if (view.Left.Count != board.CornerCount || view.Right.Count != board.CornerCount)
+            {
+                throw new UserErrorException(
+                    $"View {view.Name} has {view.Left.Count} left and {view.Right.Count} right corners, but the {board} has {board.CornerCount}; give all corners of both pictures.");
+            }
+        }
+
+        var views = corners.Select(view => new BoardView { Name = view.Name, Left = [.. view.Left], Right = [.. view.Right] }).ToArray();
+        return new CalibrationTask(board, model ?? CalibrationModel.FiveTerms, leftSize, rightSize, Provenance.None).Run(views, progress, cancellation);
+    }
+
+    // Finding the board takes about half of the whole time.
+    private const double FindingShare = 0.5;
+
+    private static BoardView FindBoard(StereoPair pair, string name, Board board)
+    {
+        var (left, right) = (CornerFinder.Find(pair.Left, board), CornerFinder.Find(pair.Right, board));
+        var missing = (left.IsEmpty, right.IsEmpty) switch
+        {
+            (true, true) => "either picture",
+            (true, false) => "the left picture",
+            (false, true) => "the right picture",
+            _ => null,
+        };
+        return new()
+        {
+            Name = name,
+            Pair = pair,
+            Left = left,
+            Right = right,
+            WhyNotUsed = missing is null ? null : $"The {board} is not wholly seen in {missing} of view {name}; show the whole board, sharp and without glare.",
+        };
+    }
+
+    private static void RequireOneSize(IReadOnlyList<StereoPair> pairs)
+    {
+        if (pairs.Count == 0)
+        {
+            throw new UserErrorException("There are no pairs to calibrate from; capture the board with both cameras, ten times or more.");
+        }
+
+        foreach (var pair in pairs)
+        {
+            if (pair.Left.Size != pairs[0].Left.Size || pair.Right.Size != pairs[0].Right.Size)
+            {
+                throw new UserErrorException(
+                    $"The pictures of '{pair.Name}' are {pair.Left.Size} and {pair.Right.Size} px, but those of '{pairs[0].Name}' are {pairs[0].Left.Size} and {pairs[0].Right.Size} px; calibrate with captures of one size.");
+            }
+        }
+    }
+
+    private sealed class LaterShare(IProgress<double> whole) : IProgress<double>
+    {
+        public void Report(double value) => whole.Report(FindingShare + (1 - FindingShare) * value);
+    }
 }
