@@ -8,7 +8,7 @@ namespace Pairwright.Calibration;
 /// <summary>Finds a checkerboard's inner corners in a picture, numbered so that both cameras agree.</summary>
 /// <remarks>
 /// OpenCV finds the board and refines each corner to where the gradients around it are orthogonal to their offsets (Förstner and Gülch 1987).
-/// The window of the refinement follows the spacing of the corners in the picture: as large as may be without reaching the next one.
+/// The window of the refinement follows the spacing of the corners in the picture: a third of the smallest spacing, so that a board seen at a slant does not bring its next corners in.
 /// </remarks>
 internal static class CornerFinder
 {
@@ -25,7 +25,7 @@ internal static class CornerFinder
             return [];
         }
 
-        var reach = Math.Clamp((int)(SmallestSpacing(found, board) / 2.5), 2, LargestReach);
+        var reach = Math.Clamp((int)(SmallestSpacing(found, board) / 3), 2, LargestReach);
         var refined = Cv2.CornerSubPix(grey, found, new(reach, reach), new(-1, -1), new(CriteriaTypes.Eps | CriteriaTypes.MaxIter, 100, 1e-4));
         ImmutableArray<RawPixel> corners = [.. refined.Select(point => new RawPixel(point.X, point.Y))];
         return board.ColoursTellHalfTurn && !StartsDark(picture, corners, board) ? [.. corners.Reverse()] : corners;

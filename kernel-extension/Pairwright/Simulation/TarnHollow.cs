@@ -34,23 +34,24 @@ public static class TarnHollow
 
     private static readonly ImmutableArray<Light> Lamps = [new(new(0.5, -0.4, -1), 0.42), new(new(-0.6, 0.3, -1), 0.28)];
 
-    // Middle of the board on the site frame in millimetres, then turns about X, Y and Z in degrees.
+    // Middle of the board on the site frame in millimetres, then turns about X, Y and Z in degrees. Every pose stands wholly over the belt, with all
+    // corners in both pictures; together they tilt every way and reach as far into the pictures' corners as the shared view does.
     private static readonly ImmutableArray<(Vector3D Place, double X, double Y, double Z)> BoardPoses =
     [
         (new(0, 0, 1060), 3, -2, 1),
-        (new(-190, -150, 1080), -18, 14, 4),
-        (new(190, -150, 1080), -16, -20, -6),
-        (new(-185, 150, 1080), 20, 16, -3),
-        (new(185, 145, 1080), 18, -18, 5),
-        (new(0, -40, 860), 26, 4, -8),
-        (new(-40, 30, 880), -24, 22, 12),
-        (new(60, 10, 900), 8, -30, -14),
-        (new(-160, 10, 1010), 2, 30, 90),
-        (new(165, -10, 1010), -6, -28, 88),
-        (new(10, 130, 1000), 30, -4, 175),
-        (new(0, -140, 1000), -32, 6, 3),
-        (new(0, 0, 1160), -12, 12, 30),
-        (new(20, 10, 940), 14, 14, -38),
+        (new(80, 30, 790), 31, 8, 90),
+        (new(-20, -70, 780), 18, -19, 0),
+        (new(-140, 130, 930), -12, 16, -6),
+        (new(210, -60, 920), -31, -13, 86),
+        (new(-140, -130, 960), 22, 13, 4),
+        (new(-50, 80, 820), 17, -13, 178),
+        (new(210, 90, 970), -28, 8, 86),
+        (new(-30, 100, 800), -17, -24, 12),
+        (new(30, -80, 780), 18, 31, 12),
+        (new(-20, 10, 780), 10, -8, -38),
+        (new(-10, -70, 780), -18, 10, 30),
+        (new(-190, -90, 1000), -16, -11, 90),
+        (new(50, -90, 860), 13, 9, 4),
     ];
 
     /// <summary>The true rig.</summary>
