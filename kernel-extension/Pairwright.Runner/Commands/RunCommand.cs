@@ -33,7 +33,7 @@ internal sealed class RunCommand(IAnsiConsole console) : AsyncCommand<RunSetting
         files.Write();
         progress.Begin();
         var sinceWrite = Stopwatch.StartNew();
-        await run.RunAsync(Changed, interrupt.Token);
+        await run.RunAsync(Changed, TimeProvider.System, interrupt.Token);
         progress.End(files);
         return run.ExitCode;
 

@@ -13,9 +13,10 @@ internal static class ChildProcess
     /// <param name="job">The cells to run.</param>
     /// <param name="limits">What the child may take.</param>
     /// <param name="hear">Called for each message, one at a time.</param>
+    /// <param name="clock">What the time limit is measured with.</param>
     /// <param name="interrupt">Ends the child early.</param>
     /// <returns>How the child ended, after its last message has been heard.</returns>
-    public static async Task<ChildEnd> RunAsync(CellJob job, RunLimits limits, Action<ChildMessage> hear, CancellationToken interrupt)
+    public static async Task<ChildEnd> RunAsync(CellJob job, RunLimits limits, Action<ChildMessage> hear, TimeProvider clock, CancellationToken interrupt)
     {
         var pipeName = $"pairwright-{Guid.NewGuid():N}";
         await using var pipe = new NamedPipeServerStream(pipeName, PipeDirection.In, 1, PipeTransmissionMode.Byte, PipeOptions.Asynchronous | PipeOptions.CurrentUserOnly);
@@ -32,7 +33,7 @@ internal static class ChildProcess
             }
         }, CancellationToken.None);
 
-        var watching = WatchAsync(process, limits, interrupt);
+        var watching = WatchAsync(process, limits, clock, interrupt);
         var reading = ReadMessagesAsync(pipe, process, messages.Writer);
         var texts = Task.WhenAll(
             ReadTextAsync(process.StandardOutput, "stdout", messages.Writer, null),
@@ -89,14 +90,14 @@ internal static class ChildProcess
         }
     }
 
-    private static async Task<ChildEndKind> WatchAsync(Process process, RunLimits limits, CancellationToken interrupt)
+    private static async Task<ChildEndKind> WatchAsync(Process process, RunLimits limits, TimeProvider clock, CancellationToken interrupt)
     {
-        var clock = Stopwatch.StartNew();
+        var start = clock.GetTimestamp();
         while (!process.HasExited)
         {
             ChildEndKind? reason =
                 interrupt.IsCancellationRequested ? ChildEndKind.Interrupted
-                : clock.Elapsed >= limits.Time ? ChildEndKind.OutOfTime
+                : clock.GetElapsedTime(start) >= limits.Time ? ChildEndKind.OutOfTime
                 : ResidentBytes(process) > limits.MemoryBytes ? ChildEndKind.OutOfMemory
                 : null;
             if (reason is { } why)

@@ -9,6 +9,7 @@ internal sealed class NotebookRun
     private readonly List<RunVerdict> _verdicts = [];
     private CellRun? _current;
 
+    /// <exception cref="BadUsageException">A code cell is in another language than C#.</exception>
     public NotebookRun(NotebookDocument document, IReadOnlyList<KeyValuePair<string, string>> parameters, RunLimits limits)
     {
         Document = document;
@@ -29,6 +30,7 @@ internal sealed class NotebookRun
                 heading = null;
             }
         }
+        RequireCSharpCells();
     }
 
     public NotebookDocument Document { get; }
@@ -59,10 +61,10 @@ internal sealed class NotebookRun
 
     /// <summary>Runs all cells in a child process.</summary>
     /// <param name="changed">Told after each step that a report or a terminal would show; the cell is null where none is meant.</param>
+    /// <param name="clock">What the time limit is measured with.</param>
     /// <param name="interrupt">Ends the run early.</param>
-    public async Task RunAsync(Action<ChildMessageKind, CellRun?> changed, CancellationToken interrupt)
+    public async Task RunAsync(Action<ChildMessageKind, CellRun?> changed, TimeProvider clock, CancellationToken interrupt)
     {
-        RequireCSharpCells();
         var job = new CellJob(
             Path.GetDirectoryName(Document.Path)!,
             [.. _cells.Select(run => new JobCell(run.Label, run.Cell.Source))]);
@@ -77,6 +79,7 @@ internal sealed class NotebookRun
                 var cell = Take(message);
                 changed(message.Kind, cell);
             },
+            clock,
             interrupt);
 
         if (!finished && Stop is null)
