@@ -66,6 +66,11 @@ internal static class Numbers
         }
 
         var power = (int)Math.Floor(Math.Log10(Math.Abs(value)));
+        if (Math.Round(Math.Abs(value) / Math.Pow(10, power), Math.Clamp(digits - 1, 0, 15)) >= 10)
+        {
+            power++; // 9.9996 rounds to 10.00, which is 1.000 of the next power
+        }
+
         return $"{Fixed(value / Math.Pow(10, power), digits - 1)}·10{Raised(power)}";
     }
 

@@ -19,6 +19,7 @@ internal static class RendererRegistry
         new PointCloudRenderer(),
         new MeasuredPointsRenderer(),
         new NumberSpreadRenderer(),
+        new ComparedValuesRenderer(),
         new PlaneFitRenderer(),
         new QuadraticFitRenderer(),
         new RigCalibrationRenderer(),

@@ -65,6 +65,7 @@ internal static class Samples
             Requirement.AtLeast("matched share", 80.Percent()).Judge(new(double.NaN, 1, 0, "%")),
         };
         yield return Sample.Of(new NumberSpreadRenderer(), new[] { 0.1, -0.2, double.NaN, 0.4 }.Spread("row error", "px"), "px");
+        yield return Sample.Of(new ComparedValuesRenderer(), new[] { (HostileName, value, 0.9), ("twist", value, 3.0) }.BesideKnown("planks"), "mm");
         yield return Sample.Of(new VerdictRenderer(), verdicts[0], "mm");
         yield return Sample.Of<IEnumerable<Verdict>>(new VerdictListRenderer(), verdicts, "mm");
     }
