@@ -79,6 +79,12 @@ internal sealed class YamlEntry
             ? count
             : throw Wrong($"holds '{node}', which is not a whole number above zero; correct it");
 
+    /// <summary>The entry as a whole number of either sign.</summary>
+    public int Whole() =>
+        node is YamlScalarNode { Value: { } text } && int.TryParse(text, NumberStyles.AllowLeadingSign, CultureInfo.InvariantCulture, out var whole)
+            ? whole
+            : throw Wrong($"holds '{node}', which is not a whole number; correct it");
+
     /// <summary>The entry's parts.</summary>
     public IReadOnlyList<YamlEntry> Parts() =>
         node is YamlSequenceNode sequence

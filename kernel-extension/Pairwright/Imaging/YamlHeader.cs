@@ -16,6 +16,17 @@ internal static class YamlHeader
     /// <exception cref="UserErrorException">The file is of another kind, newer, or of an unknown unit.</exception>
     public static double Read(YamlEntry file, string kind, int version)
     {
+        Check(file, kind, version);
+        var lengths = file.Required("lengths");
+        return Units.FirstOrDefault(unit => unit.Name == lengths.Text()) is { Name: not null } unit
+            ? unit.Millimetres
+            : throw lengths.Wrong($"is '{lengths.Text()}', but lengths are in {string.Join(", ", Units.Select(unit => unit.Name))}; correct it");
+    }
+
+    /// <summary>Checks what the file is and the version of its format.</summary>
+    /// <exception cref="UserErrorException">The file is of another kind or newer.</exception>
+    public static void Check(YamlEntry file, string kind, int version)
+    {
         if (file.Required("kind") is var found && found.Text() != kind)
         {
             throw found.Wrong($"is '{found.Text()}', but a file of kind '{kind}' is wanted; name another file");
@@ -26,11 +37,6 @@ internal static class YamlHeader
         {
             throw written.Wrong($"is {written.Count()}, newer than the {version} that this Pairwright ({Provenance.Version}) knows; update Pairwright");
         }
-
-        var lengths = file.Required("lengths");
-        return Units.FirstOrDefault(unit => unit.Name == lengths.Text()) is { Name: not null } unit
-            ? unit.Millimetres
-            : throw lengths.Wrong($"is '{lengths.Text()}', but lengths are in {string.Join(", ", Units.Select(unit => unit.Name))}; correct it");
     }
 
     /// <summary>How many millimetres a unit of length is.</summary>

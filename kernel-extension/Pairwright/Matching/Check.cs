@@ -1,3 +1,5 @@
+using System.Runtime.CompilerServices;
+
 namespace Pairwright.Matching;
 
 /// <summary>A test that each match of a row must pass: the fifth stage of a recipe.</summary>
@@ -12,6 +14,15 @@ public abstract class Check : Stage
     /// <param name="margin">The share, at least 0.</param>
     /// <exception cref="UserErrorException">The margin is negative or not finite.</exception>
     public static Check Uniqueness(double margin = 0.05) => new UniquenessCheck(margin);
+
+    /// <summary>A check written as a function of a row.</summary>
+    /// <param name="apply">Changes the labels of what fails. It is called from several threads at once.</param>
+    /// <param name="code">The text of <paramref name="apply"/>, which the compiler fills in; it tells recipes apart.</param>
+    public static Check FromRow(Action<RowMatches> apply, [CallerArgumentExpression(nameof(apply))] string code = "")
+    {
+        ArgumentNullException.ThrowIfNull(apply);
+        return new CodeCheck(apply, code);
+    }
 
     /// <summary>Looks at a row and changes the label of what fails; labels other than <see cref="DisparityLabel.Measured"/> stay as they are.</summary>
     /// <param name="row">The row.</param>

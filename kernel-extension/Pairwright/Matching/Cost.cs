@@ -1,3 +1,4 @@
+using System.Runtime.CompilerServices;
 using Pairwright.Imaging;
 
 namespace Pairwright.Matching;
@@ -17,11 +18,36 @@ public abstract class Cost : Stage
     /// <exception cref="UserErrorException">The side is even or below three.</exception>
     public static Cost Zncc(int window = 11) => new ZnccCost(window);
 
+    /// <summary>A cost written as a function of two grey levels, such as <c>Cost.FromPixels((l, r) => Math.Abs(l - r))</c>.</summary>
+    /// <param name="difference">
+    /// The levels of a left and a right pixel on the 8-bit scale (a level of 12 bits is a multiple of 1/16) to a cost: the lower the better, not
+    /// below zero, infinite where the two cannot be compared. It is called from several threads at once.
+    /// </param>
+    /// <param name="code">The text of <paramref name="difference"/>, which the compiler fills in; it tells recipes apart.</param>
+    /// <remarks>A first try: a call per pixel and disparity. <see cref="FromRows"/> and a class derived from <see cref="Cost"/> are faster.</remarks>
+    public static Cost FromPixels(Func<double, double, double> difference, [CallerArgumentExpression(nameof(difference))] string code = "")
+    {
+        ArgumentNullException.ThrowIfNull(difference);
+        return new PixelCost(difference, code);
+    }
+
+    /// <summary>A cost written as a comparison of two stretches of rows.</summary>
+    /// <param name="comparison">Fills the costs of a stretch of the left row against that of the right one. It is called from several threads at once.</param>
+    /// <param name="code">The text of <paramref name="comparison"/>, which the compiler fills in; it tells recipes apart.</param>
+    public static Cost FromRows(RowComparison comparison, [CallerArgumentExpression(nameof(comparison))] string code = "")
+    {
+        ArgumentNullException.ThrowIfNull(comparison);
+        return new RowCost(comparison, code);
+    }
+
     /// <summary>How much of a pixel's neighbourhood a cost looks at: the window's larger side, in pixels; 1 for a single pixel.</summary>
     public virtual int SupportPx => 1;
 
-    /// <summary>The cost that two unrelated pixels typically have; it scales penalties and stands in where nothing can be compared.</summary>
-    public abstract double Unrelated { get; }
+    /// <summary>
+    /// The cost that two unrelated pixels typically have; it scales penalties and stands in where nothing can be compared. NaN, as it is where it
+    /// is not overridden, when it depends on the pictures: then it is the mean over the pair's own costs.
+    /// </summary>
+    public virtual double Unrelated => double.NaN;
 
     /// <summary>Looks at a pair once, so that the costs of its rows can be asked for.</summary>
     /// <param name="pair">The pair.</param>

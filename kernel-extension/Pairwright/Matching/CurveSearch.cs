@@ -24,6 +24,9 @@ internal sealed class CurveSearch
     private readonly Vector3D baseline;
     private readonly double tangentPerInverseMm;
 
+    // What unrelated windows cost: the cost's own figure, else the mean over the samples.
+    private double unrelated;
+
     public CurveSearch(StereoPair pair, Rig rig, RawPixel from, WindowCost cost)
     {
         (this.pair, this.rig, this.from, this.cost) = (pair, rig, from, cost);
@@ -63,13 +66,16 @@ internal sealed class CurveSearch
             return new(pair, from, cost, samples, none, leftPatch, null);
         }
 
+        unrelated = double.IsNaN(cost.Unrelated)
+            ? samples.Select(sample => sample.Cost).Where(double.IsFinite).DefaultIfEmpty(1).Average()
+            : cost.Unrelated;
         var best = Enumerable.Range(0, samples.Count).MinBy(i => samples[i].Cost);
         var second = SecondBest(samples, best);
         var (angle, lowest) = Refined(samples, angles, best);
         var right = new float[leftWindow.Length];
         Window(angle, right);
-        var rival = second < 0 ? cost.Unrelated : samples[second].Cost;
-        var floor = 0.005 * cost.Unrelated;
+        var rival = second < 0 ? unrelated : samples[second].Cost;
+        var floor = 0.005 * unrelated;
         var ratio = (rival + floor) / (lowest + floor);
         var sigma = Sigma(angle, right);
         var peak = new CostPeak(
@@ -134,7 +140,7 @@ internal sealed class CurveSearch
     private double Compare(ReadOnlySpan<float> window)
     {
         var value = cost.Compare(leftWindow, window);
-        return double.IsNaN(value) ? cost.Unrelated : value;
+        return !double.IsNaN(value) ? value : double.IsNaN(cost.Unrelated) ? double.PositiveInfinity : cost.Unrelated;
     }
 
     private static int SecondBest(List<CostSample> samples, int best)
@@ -245,9 +251,9 @@ internal sealed class CurveSearch
             return "The best match stands at an end of what could be searched; the true one may lie beyond.";
         }
 
-        if (lowest > 0.5 * cost.Unrelated)
+        if (lowest > 0.5 * unrelated)
         {
-            return $"Even the best window is unlike the left one (cost {lowest:0.###} of {cost.Unrelated:0.###} for unrelated windows).";
+            return $"Even the best window is unlike the left one (cost {lowest:0.###} of {unrelated:0.###} for unrelated windows).";
         }
 
         return ratio < DistinctRatio && second >= 0

@@ -1,3 +1,5 @@
+using System.Runtime.CompilerServices;
+
 namespace Pairwright.Matching;
 
 /// <summary>A pass over the whole map after all checks: the last stage of a recipe.</summary>
@@ -11,6 +13,15 @@ public abstract class Filter : Stage
 
     /// <summary>The median of the measured disparities of each measured pixel's 3 × 3 neighbourhood; the lower one of an even number.</summary>
     public static Filter Median { get; } = new MedianFilter();
+
+    /// <summary>A filter written as a function of the map.</summary>
+    /// <param name="apply">Changes disparities and labels.</param>
+    /// <param name="code">The text of <paramref name="apply"/>, which the compiler fills in; it tells recipes apart.</param>
+    public static Filter FromMap(Action<WorkingMap> apply, [CallerArgumentExpression(nameof(apply))] string code = "")
+    {
+        ArgumentNullException.ThrowIfNull(apply);
+        return new CodeFilter(apply, code);
+    }
 
     /// <summary>Changes disparities and labels.</summary>
     /// <param name="map">The map.</param>

@@ -15,7 +15,7 @@ internal static class Matcher
         foreach (var filter in recipe.Filters)
         {
             stop.ThrowIfCancellationRequested();
-            filter.Apply(map, stop);
+            StageGuard.Run(filter, stop, () => filter.Apply(map, stop));
         }
 
         progress?.Report(1);

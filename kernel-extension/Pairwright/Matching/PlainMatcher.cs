@@ -1,3 +1,4 @@
+using System.Runtime.ExceptionServices;
 using Pairwright.Imaging;
 
 namespace Pairwright.Matching;
@@ -13,6 +14,8 @@ internal sealed class PlainMatcher
     private readonly int width;
     private readonly int height;
     private readonly int count;
+    private readonly ICostRows rows;
+    private readonly float unrelated;
     private readonly float small;
     private readonly float large;
 
@@ -20,8 +23,10 @@ internal sealed class PlainMatcher
     {
         (this.pair, this.recipe, this.settings) = (pair, recipe, settings);
         (width, height, count) = (pair.Size.Width, pair.Size.Height, recipe.Range.Count);
+        rows = StageGuard.Run(recipe.Cost, default, () => recipe.Cost.Prepare(pair));
+        unrelated = (float)StageGuard.Run(recipe.Cost, default, () => CostScale.Of(recipe.Cost, rows, pair, recipe.Range));
         var optimisation = (SemiGlobal)recipe.Optimisation;
-        (small, large) = ((float)optimisation.SmallPenalty(recipe.Cost), (float)optimisation.LargePenalty(recipe.Cost));
+        (small, large) = ((float)optimisation.SmallPenalty(unrelated), (float)optimisation.LargePenalty(unrelated));
     }
 
     public void Run(WorkingMap map, CancellationToken stop, IProgress<double>? progress)
@@ -39,24 +44,28 @@ internal sealed class PlainMatcher
         ForRows(stop, () => (Row: new RowMatches(pair, recipe.Range), RightLowest: new float[width]), (v, state) =>
         {
             Decide(v, totals[v], state.Row, state.RightLowest);
-            RowFinish.Apply(state.Row, recipe, map);
+            RowFinish.Apply(state.Row, recipe, map, stop);
         });
     }
 
     private float[][] Costs(CancellationToken stop)
     {
-        var rows = recipe.Cost.Prepare(pair);
         var costs = new float[height][];
         ForRows(stop, () => 0, (v, _) =>
         {
             var row = new float[width * count];
-            rows.Row(v, recipe.Range, row);
+            StageGuard.Run(recipe.Cost, stop, () => rows.Row(v, recipe.Range, row));
 
             // What cannot be compared neither attracts nor repels a path.
-            var standIn = (float)recipe.Cost.Unrelated;
             for (var i = 0; i < row.Length; i++)
             {
-                row[i] = float.IsPositiveInfinity(row[i]) ? standIn : row[i];
+                if (!(row[i] >= 0))
+                {
+                    throw new UserErrorException(
+                        $"The cost '{recipe.Cost.Name}' gave {(float.IsNaN(row[i]) ? "NaN" : $"{row[i]}")} at column {i / count} of row {v} for disparity {recipe.Range.Least + i % count}; a cost is a number not below zero, or positive infinity where nothing can be compared.");
+                }
+
+                row[i] = float.IsPositiveInfinity(row[i]) ? unrelated : row[i];
             }
 
             costs[v] = row;
@@ -171,16 +180,25 @@ internal sealed class PlainMatcher
         }
     }
 
-    private void ForRows<TState>(CancellationToken stop, Func<TState> start, Action<int, TState> body) =>
-        Parallel.For(
-            0,
-            height,
-            new() { MaxDegreeOfParallelism = settings.Threads, CancellationToken = stop },
-            start,
-            (v, _, state) =>
-            {
-                body(v, state);
-                return state;
-            },
-            _ => { });
+    private void ForRows<TState>(CancellationToken stop, Func<TState> start, Action<int, TState> body)
+    {
+        try
+        {
+            Parallel.For(
+                0,
+                height,
+                new() { MaxDegreeOfParallelism = settings.Threads, CancellationToken = stop },
+                start,
+                (v, _, state) =>
+                {
+                    body(v, state);
+                    return state;
+                },
+                _ => { });
+        }
+        catch (AggregateException fault) when (fault.InnerExceptions.FirstOrDefault() is UserErrorException first)
+        {
+            ExceptionDispatchInfo.Capture(first).Throw();
+        }
+    }
 }

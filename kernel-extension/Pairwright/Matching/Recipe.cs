@@ -2,6 +2,7 @@ using System.Collections.Immutable;
 using System.Security.Cryptography;
 using System.Text;
 using Pairwright.Geometry;
+using Pairwright.Imaging;
 
 namespace Pairwright.Matching;
 
@@ -70,6 +71,21 @@ public sealed record Recipe
         }
 
         return For(new DisparityRange((int)least, (int)most));
+    }
+
+    /// <summary>The usual recipe, with the range that a rig and the working distance call for when its captures are rectified as usual.</summary>
+    /// <param name="rig">The rig.</param>
+    /// <param name="nearestMm">The nearest depth along the rectified axis, in millimetres, above zero.</param>
+    /// <param name="farthestMm">The farthest depth, in millimetres, above the nearest; may be infinite.</param>
+    /// <remarks>
+    /// The range is that of <see cref="StereoPair.Rectify(RectificationFit, PictureSize?)"/> without arguments; for another rectification, give
+    /// its geometry instead.
+    /// </remarks>
+    /// <exception cref="UserErrorException">The depths are not in order, or the rig cannot be rectified.</exception>
+    public static Recipe For(Rig rig, double nearestMm, double farthestMm)
+    {
+        ArgumentNullException.ThrowIfNull(rig);
+        return For(Rectification.Of(rig).Geometry, nearestMm, farthestMm);
     }
 
     private const int EndMarginPx = 2;

@@ -29,12 +29,12 @@ internal sealed class SemiGlobal : Optimisation
         .. large is { } l ? [Setting("large penalty", l)] : Array.Empty<StageSetting>(),
     ];
 
-    /// <summary>The penalty of a change by one, whole where the scale of the cost allows it.</summary>
-    public double SmallPenalty(Cost cost) => small ?? Math.Min(Share(cost, 0.25), large ?? double.PositiveInfinity);
+    /// <summary>The penalty of a change by one for a cost's typical value between unrelated pixels; whole where the scale of the cost allows it.</summary>
+    public double SmallPenalty(double unrelated) => small ?? Math.Min(Share(unrelated, 0.25), large ?? double.PositiveInfinity);
 
     /// <summary>The penalty of a larger change.</summary>
-    public double LargePenalty(Cost cost) => Math.Max(large ?? Share(cost, 1.5), SmallPenalty(cost));
+    public double LargePenalty(double unrelated) => Math.Max(large ?? Share(unrelated, 1.5), SmallPenalty(unrelated));
 
     // Whole penalties keep census on whole numbers, where the fast path works.
-    private static double Share(Cost cost, double share) => cost.Unrelated >= 4 ? Math.Round(cost.Unrelated * share) : cost.Unrelated * share;
+    private static double Share(double unrelated, double share) => unrelated >= 4 ? Math.Round(unrelated * share) : unrelated * share;
 }

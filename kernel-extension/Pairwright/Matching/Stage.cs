@@ -3,7 +3,10 @@ using System.Globalization;
 namespace Pairwright.Matching;
 
 /// <summary>One part of a recipe: a published method with its settings, or one that an engineer wrote.</summary>
-/// <remarks>Immutable. Two stages are equal when they are of one type and have one name and the same settings.</remarks>
+/// <remarks>
+/// Immutable. Two stages are equal when they are of one type and have one name, the same settings and, where they were made from a piece of
+/// code, the same code.
+/// </remarks>
 public abstract class Stage : IEquatable<Stage>
 {
     /// <summary>The method's name, as it stands in a recipe file; the type's own name where it is not overridden.</summary>
@@ -12,9 +15,12 @@ public abstract class Stage : IEquatable<Stage>
     /// <summary>The settings, in the order in which they are read aloud; none where it is not overridden.</summary>
     public virtual IReadOnlyList<StageSetting> Settings => [];
 
-    /// <summary>Whether another stage is of this type and has this name and these settings.</summary>
+    /// <summary>The code that the stage was made from; nothing for a class of its own.</summary>
+    private protected virtual Delegate? Code => null;
+
+    /// <summary>Whether another stage is of this type and has this name, these settings and this code.</summary>
     public bool Equals(Stage? other) =>
-        other is not null && GetType() == other.GetType() && Name == other.Name && Settings.SequenceEqual(other.Settings);
+        other is not null && GetType() == other.GetType() && Name == other.Name && Settings.SequenceEqual(other.Settings) && Equals(Code, other.Code);
 
     /// <inheritdoc/>
     public sealed override bool Equals(object? obj) => Equals(obj as Stage);

@@ -1,3 +1,5 @@
+using System.Runtime.CompilerServices;
+
 namespace Pairwright.Matching;
 
 /// <summary>Where between whole disparities the lowest total lies: the fourth stage of a recipe.</summary>
@@ -11,6 +13,15 @@ public abstract class SubPixel : Stage
 
     /// <summary>The meeting point of two lines of equal and opposite slope through three totals; right for costs that fall to a point (Shimizu and Okutomi 2001).</summary>
     public static SubPixel Equiangular { get; } = new EquiangularLines();
+
+    /// <summary>An estimate written as a function of the totals below, at and above the winner.</summary>
+    /// <param name="offset">Gives the offset from the winner, −0.5 to 0.5 px. It is called from several threads at once.</param>
+    /// <param name="code">The text of <paramref name="offset"/>, which the compiler fills in; it tells recipes apart.</param>
+    public static SubPixel FromTotals(Func<float, float, float, float> offset, [CallerArgumentExpression(nameof(offset))] string code = "")
+    {
+        ArgumentNullException.ThrowIfNull(offset);
+        return new CodeSubPixel(offset, code);
+    }
 
     /// <summary>The offset of the lowest point from the whole disparity, −0.5 to 0.5 px.</summary>
     /// <param name="before">The total at the disparity below.</param>

@@ -1,0 +1,68 @@
+using Pairwright.Imaging;
+
+namespace Pairwright.Matching;
+
+/// <summary>All methods that a recipe file can name, and how each is made from its settings.</summary>
+internal sealed class StageBook(IEnumerable<Stage> ownStages)
+{
+    private static readonly Method[] Methods =
+    [
+        new(StageKind.Cost, "census", ["width", "height"], entry => Cost.Census(Whole(entry, "width"), Whole(entry, "height"))),
+        new(StageKind.Cost, "zncc", ["window"], entry => Cost.Zncc(Whole(entry, "window"))),
+        new(StageKind.Aggregation, "none", [], _ => Aggregation.None),
+        new(
+            StageKind.Optimisation,
+            "semi-global",
+            ["small-penalty", "large-penalty"],
+            entry => Optimisation.SemiGlobal(OptionalNumber(entry, "small-penalty"), OptionalNumber(entry, "large-penalty"))),
+        new(StageKind.SubPixel, "none", [], _ => SubPixel.None),
+        new(StageKind.SubPixel, "parabola", [], _ => SubPixel.Parabola),
+        new(StageKind.SubPixel, "equiangular", [], _ => SubPixel.Equiangular),
+        new(StageKind.Check, "left-right", ["tolerance-px"], entry => Check.LeftRight(Whole(entry, "tolerance-px"))),
+        new(StageKind.Check, "uniqueness", ["margin"], entry => Check.Uniqueness(Number(entry, "margin"))),
+        new(StageKind.Filter, "speckle", ["smallest-px", "step-px"], entry => Filter.Speckle(Whole(entry, "smallest-px"), Number(entry, "step-px"))),
+        new(StageKind.Filter, "median", [], _ => Filter.Median),
+    ];
+
+    private readonly Stage[] own = [.. ownStages];
+
+    /// <summary>A setting's name as it stands in a file.</summary>
+    public static string Key(string settingName) => settingName.Replace(' ', '-');
+
+    /// <summary>The stage that an entry names.</summary>
+    /// <exception cref="UserErrorException">There is no such stage, or its settings are refused.</exception>
+    public Stage Read(string kind, YamlEntry entry)
+    {
+        var name = entry.Required("method").Text();
+        if (own.FirstOrDefault(stage => StageKind.Of(stage) == kind && stage.Name == name) is { } given)
+        {
+            // The file may have been written with other settings of the engineer's class: then it means something else.
+            var text = string.Join(", ", entry.Named().Where(part => part.Name != "method").Select(part => $"{part.Name} {part.Entry.Text()}"));
+            var wanted = string.Join(", ", given.Settings.Select(setting => $"{Key(setting.Name)} {setting.Value}"));
+            return text == wanted
+                ? given
+                : throw entry.Wrong($"names the {kind} '{name}' with the settings '{text}', but the one given on reading has '{wanted}'; give the one that the file means");
+        }
+
+        var method = Methods.FirstOrDefault(each => each.Kind == kind && each.Name == name)
+            ?? throw entry.Wrong(
+                $"names an unknown {kind} '{name}'; known are {string.Join(", ", Methods.Where(each => each.Kind == kind).Select(each => each.Name))}, and those written in a cell when given on reading");
+        entry.WithOnly([.. method.Settings, "method"]);
+        try
+        {
+            return method.Make(entry);
+        }
+        catch (UserErrorException fault) when (!fault.Message.StartsWith('\''))
+        {
+            throw entry.Wrong($"is refused: {fault.Message.TrimEnd('.')}");
+        }
+    }
+
+    private static int Whole(YamlEntry entry, string name) => entry.Required(name).Whole();
+
+    private static double Number(YamlEntry entry, string name) => entry.Required(name).Number();
+
+    private static double? OptionalNumber(YamlEntry entry, string name) => entry.Optional(name)?.Number();
+
+    private sealed record Method(string Kind, string Name, string[] Settings, Func<YamlEntry, Stage> Make);
+}
