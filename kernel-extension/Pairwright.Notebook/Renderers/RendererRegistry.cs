@@ -23,6 +23,7 @@ internal static class RendererRegistry
         new PlaneFitRenderer(),
         new QuadraticFitRenderer(),
         new RigCalibrationRenderer(),
+        new RigCheckRenderer(),
         new MeasuredValueRenderer(),
         new MeasuredValueListRenderer(),
         new VerdictRenderer(),

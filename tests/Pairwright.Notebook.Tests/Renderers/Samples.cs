@@ -1,4 +1,5 @@
 using MathNet.Numerics.LinearAlgebra;
+using Pairwright.Calibration;
 using Pairwright.Geometry;
 using Pairwright.Imaging;
 using Pairwright.Matching;
@@ -65,9 +66,32 @@ internal static class Samples
             Requirement.AtLeast("matched share", 80.Percent()).Judge(new(double.NaN, 1, 0, "%")),
         };
         yield return Sample.Of(new NumberSpreadRenderer(), new[] { 0.1, -0.2, double.NaN, 0.4 }.Spread("row error", "px"), "px");
+        var board = Board.Checker(6, 5, 30);
+        var views = BoardViews(rig, board);
+        yield return Sample.Of(new RigCalibrationRenderer(), RigCalibration.FromCorners(views, board, rig.Left.Size, rig.Right.Size, CalibrationModel.TwoRadialTerms), "px");
+        yield return Sample.Of(new RigCheckRenderer(), RigCheck.OfCorners(rig, views[0], board), "°");
         yield return Sample.Of(new ComparedValuesRenderer(), new[] { (HostileName, value, 0.9), ("twist", value, 3.0) }.BesideKnown("planks"), "mm");
         yield return Sample.Of(new VerdictRenderer(), verdicts[0], "mm");
         yield return Sample.Of<IEnumerable<Verdict>>(new VerdictListRenderer(), verdicts, "mm");
+    }
+
+    // A board in eight poses, each corner a little off.
+    private static BoardCorners[] BoardViews(Rig rig, Board board)
+    {
+        var random = new Random(5);
+        RawPixel[] Seen(Camera camera, Pose pose) =>
+            [.. board.Corners.Select(corner => camera.Project(pose.Transform(corner))).Select(pixel => new RawPixel(pixel.U + 0.1 * random.NextDouble(), pixel.V + 0.1 * random.NextDouble()))];
+
+        return
+        [
+            .. Enumerable.Range(0, 8).Select(i =>
+            {
+                var rotation = Rotation.FromVector(new(0.5 * Math.Sin(i), 0.5 * Math.Cos(2 * i), 0.2 * i));
+                var centre = 0.5 * (board.Corners[0] + board.Corners[^1]);
+                var pose = new Pose(rotation, new Vector3D(40 * Math.Cos(i), 25 * Math.Sin(3 * i), 480 + 30 * i) - rotation * centre);
+                return new BoardCorners($"{HostileName} {i}", Seen(rig.Left, pose), Seen(rig.Right, pose.Then(rig.RightFromLeft)));
+            }),
+        ];
     }
 
     // A plane of soft blobs at Z = 1000 mm, looked up where each pixel's ray meets it.
