@@ -1,3 +1,5 @@
+using System.Runtime.InteropServices;
+using System.Runtime.Loader;
 using System.Text.RegularExpressions;
 using OpenCvSharp;
 
@@ -36,6 +38,7 @@ internal static partial class OpenCvLibrary
 
     private static string Load()
     {
+        FindBesideThisAssembly();
         try
         {
             // What goes wrong is said by our own sentences; the library's chatter would stand in reports and terminals.
@@ -45,6 +48,21 @@ internal static partial class OpenCvLibrary
         catch (Exception fault) when (Explain(fault) is { } explained)
         {
             throw explained;
+        }
+    }
+
+    /// <remarks>
+    /// A program's list of dependencies, or a package reference in a notebook, tells the runtime where the native library
+    /// lies. Where an assembly was loaded by its path alone nobody reads such a list; then it is looked for here. This must
+    /// happen before the first use: a type initializer that failed stays failed.
+    /// </remarks>
+    private static void FindBesideThisAssembly()
+    {
+        var here = Path.GetDirectoryName(typeof(OpenCvLibrary).Assembly.Location);
+        if (!string.IsNullOrEmpty(here) && AssemblyLoadContext.GetLoadContext(typeof(Cv2).Assembly) is { } context)
+        {
+            context.ResolvingUnmanagedDll += (_, name) =>
+                NativeLibrary.TryLoad(Path.Combine(here, "runtimes", "linux-x64", "native", $"lib{name}.so"), out var handle) ? handle : 0;
         }
     }
 

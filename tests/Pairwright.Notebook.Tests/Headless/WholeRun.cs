@@ -35,7 +35,7 @@ public sealed class WholeRun : IAsyncLifetime
                 var shown = KernelInvocationContextExtensions.Display(KernelInvocationContext.Current, new DateTime(2001, 1, 1), "text/plain");
                 """),
             Code("shown.Update(new DateTime(2002, 2, 2)); display(\"a < b\");"),
-            Code("#i \"nuget:../feed-that-is-not-here\"\n#r \"nuget: Pairwright.Notebook, 9.9.9\"\n#r \"../bin/Pairwright.dll\"\nnew UserErrorException(\"here\").Message"),
+            Code("#i \"nuget:../feed-that-is-not-here\"\n#r \"nuget: Pairwright.Notebook, 9.9.9\"\n#r \"../bin/Pairwright.Notebook.dll\"\nawait Pairwright.Notebook.Extension.Load();\nnew UserErrorException(\"here\").Message"),
             Code(string.Concat(LibraryTypes.Select(type => $"Console.WriteLine(typeof({type.Name}).FullName);\n"))),
             Code("System.IO.File.ReadAllText(\"beside.txt\")"),
             Code("var line = new string('x', 1000); for (var i = 0; i < 3000; i++) Console.WriteLine(line);"),
