@@ -44,24 +44,6 @@ internal sealed class CensusCost : WindowCost
     public override ICostRows Prepare(RectifiedPair pair)
     {
         pair.MustHold(Window);
-        return new Rows(pair, CensusTransform.Of(pair.Left, Window), CensusTransform.Of(pair.Right, Window));
-    }
-
-    private sealed class Rows(RectifiedPair pair, ulong[] left, ulong[] right) : ICostRows
-    {
-        public void Row(int v, DisparityRange range, Span<float> costs)
-        {
-            var width = pair.Size.Width;
-            var start = v * width;
-            for (var u = 0; u < width; u++)
-            {
-                for (var i = 0; i < range.Count; i++)
-                {
-                    costs[u * range.Count + i] = pair.CanCompare(u, v, range.Least + i)
-                        ? System.Numerics.BitOperations.PopCount(left[start + u] ^ right[start + u - range.Least - i])
-                        : float.PositiveInfinity;
-                }
-            }
-        }
+        return new HammingRows(pair, CensusTransform.Of(pair.Left, Window), CensusTransform.Of(pair.Right, Window));
     }
 }

@@ -18,6 +18,65 @@ public abstract class Cost : Stage
     /// <exception cref="UserErrorException">The side is even or below three.</exception>
     public static Cost Zncc(int window = 11) => new ZnccCost(window);
 
+    /// <summary>The centre-symmetric census transform over a window, compared by Hamming distance: half the bits of the plain one (Spangenberg et al. 2013).</summary>
+    /// <param name="width">The window's columns, odd.</param>
+    /// <param name="height">The window's rows, odd; the window holds at most 129 pixels.</param>
+    /// <remarks>Gain and offset do not matter.</remarks>
+    /// <exception cref="UserErrorException">A side is even or below three, or the window is too large.</exception>
+    public static Cost CentreSymmetricCensus(int width = 9, int height = 7) => new CentreSymmetricCensusCost(width, height);
+
+    /// <summary>The difference of two rank transforms: how many of a square window's pixels are darker than its middle (Zabih and Woodfill 1994).</summary>
+    /// <param name="window">The window's side in pixels, odd.</param>
+    /// <remarks>Gain and offset do not matter.</remarks>
+    /// <exception cref="UserErrorException">The side is even or below three.</exception>
+    public static Cost Rank(int window = 7) => new RankCost(window);
+
+    /// <summary>The absolute difference of two grey levels, in levels of the 8-bit scale.</summary>
+    /// <param name="limit">The greatest cost, in levels, so that a few bad pixels do not outweigh the rest; none when left out.</param>
+    /// <exception cref="UserErrorException">The limit is not above zero.</exception>
+    public static Cost AbsoluteDifference(double? limit = null) => new AbsoluteDifferenceCost(limit);
+
+    /// <summary>The difference of two grey levels that does not mind where between two pixels an edge falls (Birchfield and Tomasi 1998), in levels of the 8-bit scale.</summary>
+    /// <param name="limit">The greatest cost, in levels; none when left out.</param>
+    /// <exception cref="UserErrorException">The limit is not above zero.</exception>
+    public static Cost SamplingInsensitiveDifference(double? limit = null) => new SamplingInsensitiveCost(limit);
+
+    /// <summary>The sum of absolute differences of two square windows less their means, divided by their area, in levels of the 8-bit scale.</summary>
+    /// <param name="window">The window's side in pixels, odd.</param>
+    /// <remarks>An offset does not matter.</remarks>
+    /// <exception cref="UserErrorException">The side is even or below three.</exception>
+    public static Cost ZeroMeanSad(int window = 7) => new ZeroMeanSadCost(window);
+
+    /// <summary>The sum of squared differences of two square windows, divided by their area, in squared levels of the 8-bit scale.</summary>
+    /// <param name="window">The window's side in pixels, odd.</param>
+    /// <exception cref="UserErrorException">The side is even or below three.</exception>
+    public static Cost Ssd(int window = 7) => new SsdCost(window);
+
+    /// <summary>One minus the normalised cross-correlation of two square windows: 0 for windows equal up to gain, at most 1.</summary>
+    /// <param name="window">The window's side in pixels, odd.</param>
+    /// <exception cref="UserErrorException">The side is even or below three.</exception>
+    public static Cost Ncc(int window = 11) => new NccCost(window);
+
+    /// <summary>The difference of two gradients, across plus down, in levels of the 8-bit scale per pixel.</summary>
+    /// <param name="limit">The greatest cost; none when left out.</param>
+    /// <remarks>An offset does not matter.</remarks>
+    /// <exception cref="UserErrorException">The limit is not above zero.</exception>
+    public static Cost Gradient(double? limit = null) => new GradientCost(limit);
+
+    /// <summary>A blend of the truncated differences of levels and of gradients along the row (Rhemann et al. 2011; Bleyer et al. 2011).</summary>
+    /// <param name="gradientShare">The gradients' share, 0 to 1.</param>
+    /// <param name="differenceLimit">The greatest difference of levels that counts, on the 8-bit scale.</param>
+    /// <param name="gradientLimit">The greatest difference of gradients that counts, on the 8-bit scale per pixel.</param>
+    /// <exception cref="UserErrorException">The share is not from 0 to 1, or a limit not above zero.</exception>
+    public static Cost DifferenceAndGradient(double gradientShare = 0.9, double differenceLimit = 10, double gradientLimit = 2) =>
+        new DifferenceAndGradientCost(gradientShare, differenceLimit, gradientLimit);
+
+    /// <summary>Census over 9 × 7 pixels and absolute difference, each bent towards one and added (Mei et al. 2011).</summary>
+    /// <param name="censusScale">How many differing bits count as many.</param>
+    /// <param name="differenceScale">How many levels of difference, on the 8-bit scale, count as many.</param>
+    /// <exception cref="UserErrorException">A scale is not above zero.</exception>
+    public static Cost AdCensus(double censusScale = 30, double differenceScale = 10) => new AdCensusCost(censusScale, differenceScale);
+
     /// <summary>A cost written as a function of two grey levels, such as <c>Cost.FromPixels((l, r) => Math.Abs(l - r))</c>.</summary>
     /// <param name="difference">
     /// The levels of a left and a right pixel on the 8-bit scale (a level of 12 bits is a multiple of 1/16) to a cost: the lower the better, not

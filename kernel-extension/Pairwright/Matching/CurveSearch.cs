@@ -44,7 +44,7 @@ internal sealed class CurveSearch
                     $"The window of {cost.Window} px around ({from.U:0.##}, {from.V:0.##}) is not wholly on usable pixels of the left picture of {pair.Left.Size} px; choose a pixel farther in or a smaller window.");
             }
 
-            leftWindow[i] = levels.At(pixel.U, pixel.V);
+            leftWindow[i] = levels.At(pixel.U, pixel.V) * GreyLevels.ScaleOf(pair.Left);
             var ideal = rig.Left.Undistort(pixel);
             turned[i] = rig.RightFromLeft.Rotation * new Vector3D((ideal.U - camera.CentreU) / camera.FocalU, (ideal.V - camera.CentreV) / camera.FocalV, 1);
         }
@@ -122,6 +122,7 @@ internal sealed class CurveSearch
     // The levels of the right picture where a plane at a depth, facing the left camera, shows the left window; false where that is not all usable.
     private bool Window(double angle, Span<float> levels)
     {
+        var rightScale = GreyLevels.ScaleOf(pair.Right);
         var inverseDepth = Math.Tan(angle) / tangentPerInverseMm;
         for (var i = 0; i < levels.Length; i++)
         {
@@ -131,7 +132,7 @@ internal sealed class CurveSearch
                 return false;
             }
 
-            levels[i] = rightLevels.At(pixel.U, pixel.V);
+            levels[i] = rightLevels.At(pixel.U, pixel.V) * rightScale;
         }
 
         return true;
@@ -233,7 +234,8 @@ internal sealed class CurveSearch
         }
 
         var gain = rl / rr;
-        var rounding = (1 + gain * gain) / 12;
+        var (leftStep, rightStep) = (GreyLevels.ScaleOf(pair.Left), gain * GreyLevels.ScaleOf(pair.Right));
+        var rounding = (leftStep * leftStep + rightStep * rightStep) / 12;
         var variance = Math.Max((ll - gain * rl) / (right.Length - 3), rounding);
         var free = gain * gain * (gg - rg * rg / rr);
         return free > 0 ? Math.Sqrt(variance / free) : double.PositiveInfinity;
@@ -264,7 +266,7 @@ internal sealed class CurveSearch
     private Picture Patch(float[] levels, Picture picture) =>
         new(
             cost.Window,
-            Array.ConvertAll(levels, level => (ushort)Math.Clamp(Math.Round(level), 0, (1 << picture.SignificantBits) - 1)),
+            Array.ConvertAll(levels, level => (ushort)Math.Clamp(Math.Round(level / GreyLevels.ScaleOf(picture)), 0, (1 << picture.SignificantBits) - 1)),
             picture.SignificantBits,
             picture.SaturationLevel,
             provenance: picture.Provenance);

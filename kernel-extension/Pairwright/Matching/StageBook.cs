@@ -9,6 +9,28 @@ internal sealed class StageBook(IEnumerable<Stage> ownStages)
     [
         new(StageKind.Cost, "census", ["width", "height"], entry => Cost.Census(Whole(entry, "width"), Whole(entry, "height"))),
         new(StageKind.Cost, "zncc", ["window"], entry => Cost.Zncc(Whole(entry, "window"))),
+        new(
+            StageKind.Cost,
+            "centre-symmetric census",
+            ["width", "height"],
+            entry => Cost.CentreSymmetricCensus(Whole(entry, "width"), Whole(entry, "height"))),
+        new(StageKind.Cost, "rank", ["window"], entry => Cost.Rank(Whole(entry, "window"))),
+        new(StageKind.Cost, "absolute difference", ["limit"], entry => Cost.AbsoluteDifference(OptionalNumber(entry, "limit"))),
+        new(StageKind.Cost, "sampling-insensitive difference", ["limit"], entry => Cost.SamplingInsensitiveDifference(OptionalNumber(entry, "limit"))),
+        new(StageKind.Cost, "zero-mean sad", ["window"], entry => Cost.ZeroMeanSad(Whole(entry, "window"))),
+        new(StageKind.Cost, "ssd", ["window"], entry => Cost.Ssd(Whole(entry, "window"))),
+        new(StageKind.Cost, "ncc", ["window"], entry => Cost.Ncc(Whole(entry, "window"))),
+        new(StageKind.Cost, "gradient", ["limit"], entry => Cost.Gradient(OptionalNumber(entry, "limit"))),
+        new(
+            StageKind.Cost,
+            "difference and gradient",
+            ["gradient-share", "difference-limit", "gradient-limit"],
+            entry => Cost.DifferenceAndGradient(Number(entry, "gradient-share"), Number(entry, "difference-limit"), Number(entry, "gradient-limit"))),
+        new(
+            StageKind.Cost,
+            "ad-census",
+            ["census-scale", "difference-scale"],
+            entry => Cost.AdCensus(Number(entry, "census-scale"), Number(entry, "difference-scale"))),
         new(StageKind.Aggregation, "none", [], _ => Aggregation.None),
         new(
             StageKind.Optimisation,

@@ -1,4 +1,5 @@
 using Pairwright.Geometry;
+using Pairwright.Imaging;
 
 namespace Pairwright.Matching;
 
@@ -25,8 +26,18 @@ public abstract class WindowCost : Cost
     /// <inheritdoc/>
     public override int SupportPx => Math.Max(Window.Width, Window.Height);
 
-    /// <summary>The cost of two windows; NaN where they cannot be compared.</summary>
-    /// <param name="left">Grey levels of the left window, row after row.</param>
-    /// <param name="right">Grey levels of the right window, row after row.</param>
+    /// <inheritdoc/>
+    /// <remarks>Compares every window with every other unless it is overridden; beyond the border stands the nearest pixel.</remarks>
+    /// <exception cref="UserErrorException">The pictures are smaller than the window.</exception>
+    public override ICostRows Prepare(RectifiedPair pair)
+    {
+        ArgumentNullException.ThrowIfNull(pair);
+        pair.MustHold(Window);
+        return new WindowCostRows(this, pair);
+    }
+
+    /// <summary>The cost of two windows; NaN where they cannot be compared, for which <see cref="Cost.Unrelated"/> must then stand in.</summary>
+    /// <param name="left">Grey levels of the left window on the 8-bit scale (a level of 12 bits is a multiple of 1/16), row after row.</param>
+    /// <param name="right">Grey levels of the right window, likewise.</param>
     public abstract double Compare(ReadOnlySpan<float> left, ReadOnlySpan<float> right);
 }

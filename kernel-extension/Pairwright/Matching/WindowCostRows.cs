@@ -18,7 +18,7 @@ internal sealed class WindowCostRows(WindowCost cost, RectifiedPair pair) : ICos
                 var value = pair.CanCompare(u, v, d)
                     ? cost.Compare(left.AsSpan(u * area, area), right.AsSpan((u - d) * area, area))
                     : double.PositiveInfinity;
-                costs[u * range.Count + i] = double.IsNaN(value) ? (float)cost.Unrelated : (float)value;
+                costs[u * range.Count + i] = double.IsNaN(value) && !double.IsNaN(cost.Unrelated) ? (float)cost.Unrelated : (float)value;
             }
         }
     }
@@ -26,20 +26,15 @@ internal sealed class WindowCostRows(WindowCost cost, RectifiedPair pair) : ICos
     // The windows around the pixels of one row, one after the other.
     private float[] Windows(Picture picture, int v)
     {
-        var (width, height) = (picture.Size.Width, picture.Size.Height);
-        var (halfWidth, halfHeight) = (cost.Window.Width / 2, cost.Window.Height / 2);
+        var (width, half) = (picture.Size.Width, cost.Window.Width / 2);
         var windows = new float[width * cost.Window.Area];
-        var grey = picture.Grey;
-        var next = 0;
-        for (var u = 0; u < width; u++)
+        var row = new float[width + 2 * half];
+        for (var j = 0; j < cost.Window.Height; j++)
         {
-            for (var dv = -halfHeight; dv <= halfHeight; dv++)
+            WindowRows.Fill(picture, v + j - cost.Window.Height / 2, half, row);
+            for (var u = 0; u < width; u++)
             {
-                var row = Math.Clamp(v + dv, 0, height - 1) * width;
-                for (var du = -halfWidth; du <= halfWidth; du++)
-                {
-                    windows[next++] = grey[row + Math.Clamp(u + du, 0, width - 1)];
-                }
+                row.AsSpan(u, cost.Window.Width).CopyTo(windows.AsSpan((int)(u * cost.Window.Area) + j * cost.Window.Width));
             }
         }
 

@@ -31,12 +31,26 @@ internal sealed class ZnccCost(int window) : WindowCost(window, window)
         }
 
         // A window without any contrast correlates with nothing.
-        return squaresLeft > 0 && squaresRight > 0 ? 1 - products / Math.Sqrt(squaresLeft * squaresRight) : double.NaN;
+        return squaresLeft > 0 && squaresRight > 0 ? Math.Max(1 - products / Math.Sqrt(squaresLeft * squaresRight), 0) : double.NaN;
     }
 
     public override ICostRows Prepare(RectifiedPair pair)
     {
         pair.MustHold(Window);
-        return new WindowCostRows(this, pair);
+        return new Rows(pair, Window.Width / 2);
+    }
+
+    private sealed class Rows(RectifiedPair pair, int half) : ProductRows(pair, half, half)
+    {
+        private readonly double area = (2 * half + 1) * (2 * half + 1);
+
+        protected override float Cost(double left, double leftSquares, double right, double rightSquares, double products)
+        {
+            var squaresLeft = area * leftSquares - left * left;
+            var squaresRight = area * rightSquares - right * right;
+            return squaresLeft > 0 && squaresRight > 0
+                ? (float)Math.Max(1 - (area * products - left * right) / Math.Sqrt(squaresLeft * squaresRight), 0)
+                : 1;
+        }
     }
 }

@@ -17,6 +17,17 @@ public class Recipes_survive_their_files
         Recipe.For(Range) with { Cost = Cost.Census(5, 3), Checks = [], Filters = [] },
         Recipe.For(Range) with { Cost = Cost.Zncc(7), SubPixel = SubPixel.None, Optimisation = Optimisation.SemiGlobal(0.125, 1.0 / 3) },
         Recipe.For(Range) with { SubPixel = SubPixel.Equiangular, Checks = [Check.LeftRight(0), Check.Uniqueness(0.1)] },
+        Recipe.For(Range) with { Cost = Cost.CentreSymmetricCensus(7, 5) },
+        Recipe.For(Range) with { Cost = Cost.Rank(5) },
+        Recipe.For(Range) with { Cost = Cost.AbsoluteDifference(25.5) },
+        Recipe.For(Range) with { Cost = Cost.AbsoluteDifference() },
+        Recipe.For(Range) with { Cost = Cost.SamplingInsensitiveDifference(20) },
+        Recipe.For(Range) with { Cost = Cost.ZeroMeanSad(9) },
+        Recipe.For(Range) with { Cost = Cost.Ssd(3) },
+        Recipe.For(Range) with { Cost = Cost.Ncc(13) },
+        Recipe.For(Range) with { Cost = Cost.Gradient(8) },
+        Recipe.For(Range) with { Cost = Cost.DifferenceAndGradient(0.8, 9, 3) },
+        Recipe.For(Range) with { Cost = Cost.AdCensus(20, 12) },
         Recipe.For(Range) with { Filters = [Filter.Median, Filter.Speckle(12, 0.7), Filter.Median] },
     ];
 
