@@ -14,6 +14,14 @@ public abstract class Filter : Stage
     /// <summary>The median of the measured disparities of each measured pixel's 3 × 3 neighbourhood; the lower one of an even number.</summary>
     public static Filter Median { get; } = new MedianFilter();
 
+    /// <summary>
+    /// Least squares between the two pictures over a window, to free disparities of the pull towards whole pixels, and the σ of each from the
+    /// pictures' noise and slopes (Lucas and Kanade 1981; Ackermann 1984; Sabater, Morel and Almansa 2011). What the pictures do not confirm is no match.
+    /// </summary>
+    /// <param name="window">The window's side in pixels: 5, 9, 13, 17 and so on.</param>
+    /// <exception cref="UserErrorException">The window is not one.</exception>
+    public static Filter LeastSquares(int window = 13) => new LeastSquaresRefinement(window);
+
     /// <summary>A filter written as a function of the map.</summary>
     /// <param name="apply">Changes disparities and labels.</param>
     /// <param name="code">The text of <paramref name="apply"/>, which the compiler fills in; it tells recipes apart.</param>
@@ -22,6 +30,12 @@ public abstract class Filter : Stage
         ArgumentNullException.ThrowIfNull(apply);
         return new CodeFilter(apply, code);
     }
+
+    /// <summary>
+    /// For a filter that measures disparities anew: how far the errors of two of them are correlated afterwards, in pixels. Nothing for one that
+    /// takes them as they are.
+    /// </summary>
+    public virtual int? CorrelationLengthPx => null;
 
     /// <summary>Changes disparities and labels.</summary>
     /// <param name="map">The map.</param>

@@ -26,8 +26,14 @@ internal static class Matcher
             new(pair.Size, map.ConfidenceArray),
             new(pair.Size, map.LabelArray),
             watch.Elapsed,
-            pair.Provenance.Then("match", recipe.ToString()));
+            pair.Provenance.Then("match", recipe.ToString()),
+            SigmaOf(map));
     }
+
+    // A later filter may have dropped or filled what an earlier one measured.
+    private static ScalarMap? SigmaOf(WorkingMap map) => map.SigmaArray is { } sigma
+        ? new(map.Size, [.. sigma.Zip(map.LabelArray, (value, label) => label == DisparityLabel.Measured ? value : float.NaN)])
+        : null;
 
     private static void Require(RectifiedPair pair, Recipe recipe)
     {

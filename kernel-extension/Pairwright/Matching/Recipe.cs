@@ -30,8 +30,8 @@ public sealed record Recipe
     /// <summary>What each match must pass, in order; uniqueness and left-right unless said otherwise.</summary>
     public ImmutableArray<Check> Checks { get; init; } = [Check.Uniqueness(), Check.LeftRight()];
 
-    /// <summary>What passes over the whole map, in order; speckle removal and median unless said otherwise.</summary>
-    public ImmutableArray<Filter> Filters { get; init; } = [Filter.Speckle(), Filter.Median];
+    /// <summary>What passes over the whole map, in order; speckle removal, median and least squares unless said otherwise.</summary>
+    public ImmutableArray<Filter> Filters { get; init; } = [Filter.Speckle(), Filter.Median, Filter.LeastSquares()];
 
     /// <summary>The stages in the order in which they work.</summary>
     public IReadOnlyList<Stage> Stages => [Cost, Aggregation, Optimisation, SubPixel, .. Checks, .. Filters];
@@ -41,9 +41,9 @@ public sealed record Recipe
 
     /// <summary>
     /// An upper bound, in pixels, of the distance at which the errors of two disparities are still correlated: twice the cost's window, since two
-    /// windows share content up to one window's side, and paths and filters reach about as far again.
+    /// windows share content up to one window's side, and paths and filters reach about as far again; or what the last filter that measures anew says.
     /// </summary>
-    public int CorrelationLengthPx => 2 * Cost.SupportPx;
+    public int CorrelationLengthPx => Filters.Select(filter => filter.CorrelationLengthPx).LastOrDefault(length => length is not null) ?? 2 * Cost.SupportPx;
 
     /// <summary>The usual recipe over a range of disparities.</summary>
     public static Recipe For(DisparityRange range) => new(range);

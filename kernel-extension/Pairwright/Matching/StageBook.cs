@@ -44,6 +44,7 @@ internal sealed class StageBook(IEnumerable<Stage> ownStages)
         new(StageKind.Check, "uniqueness", ["margin"], entry => Check.Uniqueness(Number(entry, "margin"))),
         new(StageKind.Filter, "speckle", ["smallest-px", "step-px"], entry => Filter.Speckle(Whole(entry, "smallest-px"), Number(entry, "step-px"))),
         new(StageKind.Filter, "median", [], _ => Filter.Median),
+        new(StageKind.Filter, "least squares", ["window"], entry => Filter.LeastSquares(Whole(entry, "window"))),
     ];
 
     private readonly Stage[] own = [.. ownStages];

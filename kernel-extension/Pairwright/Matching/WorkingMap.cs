@@ -37,5 +37,7 @@ public sealed class WorkingMap
 
     internal float[] ConfidenceArray { get; }
 
+    internal float[]? SigmaArray { get; set; }
+
     internal DisparityLabel[] LabelArray { get; }
 }

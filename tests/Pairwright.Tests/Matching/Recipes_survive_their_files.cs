@@ -80,7 +80,7 @@ public class Recipes_survive_their_files
             optimisation: {method: semi-global}
             sub-pixel: {method: parabola}
             checks: [{method: uniqueness, margin: 0.05}, {method: left-right, tolerance-px: 1}]
-            filters: [{method: speckle, smallest-px: 100, step-px: 1}, {method: median}]
+            filters: [{method: speckle, smallest-px: 100, step-px: 1}, {method: median}, {method: least squares, window: 13}]
             """);
         Assert.Equal(Recipe.For(new DisparityRange(0, 63)) with { Cost = Cost.Census(7, 7) }, RecipeFile.Read(path));
     }

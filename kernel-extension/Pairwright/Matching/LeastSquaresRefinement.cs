@@ -1,0 +1,225 @@
+using Pairwright.Imaging;
+
+namespace Pairwright.Matching;
+
+/// <summary>Least squares on the pictures themselves; see <see cref="Filter.LeastSquares"/>.</summary>
+/// <remarks>
+/// <para>
+/// With the right picture warped by the map so far, the difference of the two pictures around a pixel is, to first order, the error of the
+/// disparity times the pictures' slope along the row, plus a difference of gain and of offset (Lucas and Kanade 1981; gain and offset after
+/// Ackermann 1984). A weighted least-squares solution over the window gives the step of its centre. Each neighbour is warped by its own
+/// disparity, so that slants and depth edges inside a window do no harm; weights fall off as a pyramid (a box twice over), whose transfer
+/// function has no negative lobe.
+/// </para>
+/// <para>
+/// Before every round the map is smoothed along its surfaces, each pixel by what its window knows. Without that, rounds would sharpen what
+/// windows blur, and with it the noise. Planes pass through smoothing and windows unchanged.
+/// </para>
+/// <para>
+/// The right picture's slope stands in the equations and the left one's asks them (instrumental variables; Durbin 1954): the noises of the two
+/// are independent, so that noise neither pulls nor passes for texture. The σ is that of the weighted solution: noise over slopes, as in
+/// Sabater, Morel and Almansa (2011), with the noise of both pictures taken from the window's own residual.
+/// </para>
+/// </remarks>
+internal sealed class LeastSquaresRefinement : Filter
+{
+    /// <summary>The share of white noise's variance that is left on average after a look-up between pixels along one axis by cubic splines: ∫η² of the cardinal spline η.</summary>
+    internal const double NoiseLeft = 0.87423;
+
+    private const int Rounds = 3;
+    private const int BandRows = 64;
+
+    // A pixel that the pictures move farther than this from its match was no match.
+    private const float FarthestMovePx = 1;
+
+    // Noise finds a place within reach where it looks like noise; four standard deviations keep that out.
+    private const float LargestSigmaPx = FarthestMovePx / 4;
+
+    // Windows with less than this share of their weight on matched pixels say too little.
+    private const double LeastShare = 0.2;
+
+    private readonly int reach;
+    private readonly double energy;
+
+    public LeastSquaresRefinement(int window)
+    {
+        if (window < 5 || window % 4 != 1)
+        {
+            throw new UserErrorException($"A refinement window of {window} px is not one; give 5, 9, 13, 17 and so on.");
+        }
+
+        Window = window;
+        reach = (window - 1) / 4;
+        energy = Energy();
+    }
+
+    public override string Name => "least squares";
+
+    public override IReadOnlyList<StageSetting> Settings => [Setting("window", Window)];
+
+    /// <summary>The window's side, in pixels.</summary>
+    public int Window { get; }
+
+    /// <inheritdoc/>
+    public override int? CorrelationLengthPx => Window;
+
+    public override void Apply(WorkingMap map, CancellationToken stop)
+    {
+        var size = map.Size;
+        var options = new ParallelOptions { CancellationToken = stop };
+        var pictures = new Pictures(map, options);
+        var refined = new float[size.Area];
+        for (var i = 0; i < refined.Length; i++)
+        {
+            refined[i] = map.LabelArray[i] == DisparityLabel.Measured ? map.DisparityArray[i] : float.NaN;
+        }
+
+        var (sigma, knowledge) = (new float[size.Area], new float[size.Area]);
+        for (var round = 0; round < Rounds; round++)
+        {
+            var from = SurfaceSmoothing.Of(size, refined, round == 0 ? null : knowledge, Window / 2, options);
+            var to = refined;
+            Parallel.For(0, (size.Height + BandRows - 1) / BandRows, options, band => Band(band, pictures, from, to, sigma, knowledge));
+        }
+
+        for (var i = 0; i < refined.Length; i++)
+        {
+            if (map.LabelArray[i] != DisparityLabel.Measured)
+            {
+                sigma[i] = float.NaN;
+            }
+            else if (sigma[i] <= LargestSigmaPx && Math.Abs(refined[i] - map.DisparityArray[i]) <= FarthestMovePx)
+            {
+                map.DisparityArray[i] = refined[i];
+            }
+            else
+            {
+                (map.LabelArray[i], map.DisparityArray[i], sigma[i]) = (DisparityLabel.NoMatch, float.NaN, float.NaN);
+            }
+        }
+
+        map.SigmaArray = sigma;
+    }
+
+    // Σh² of the weights h with which the pixels' noise enters a disparity after all rounds. With the window's transfer function T and the
+    // smoothing's S, a round makes h = T + (1 − T)·S·h; Parseval's theorem sums the squares.
+    private double Energy()
+    {
+        const int grid = 64;
+        var sum = 0.0;
+        for (var i = 0; i < grid; i++)
+        {
+            for (var j = 0; j < grid; j++)
+            {
+                var (x, y) = ((i + 0.5) / (2 * grid), (j + 0.5) / (2 * grid));
+                var window = Math.Pow(Box(2 * reach + 1, x) * Box(2 * reach + 1, y), 2);
+                var smoothing = Box(2 * (Window / 2) + 1, x) * Box(2 * (Window / 2) + 1, y);
+                var h = 0.0;
+                for (var round = 0; round < Rounds; round++)
+                {
+                    h = window + (1 - window) * smoothing * h;
+                }
+
+                sum += h * h;
+            }
+        }
+
+        return sum / (grid * grid);
+    }
+
+    private static double Box(int side, double frequency) => Math.Sin(Math.PI * side * frequency) / (side * Math.Sin(Math.PI * frequency));
+
+    // One round over a band of rows; rows above and below within reach are warped along with it.
+    private void Band(int band, Pictures pictures, float[] from, float[] to, float[] sigma, float[] knowledge)
+    {
+        var (width, height) = (pictures.Size.Width, pictures.Size.Height);
+        var halo = 2 * reach;
+        var (firstRow, endRow) = (band * BandRows, Math.Min((band + 1) * BandRows, height));
+        var rows = endRow - firstRow + 2 * halo;
+        var sums = new RefinementSums(width, rows, reach);
+        for (var row = Math.Max(0, halo - firstRow); row < rows && firstRow - halo + row < height; row++)
+        {
+            pictures.Enter(firstRow - halo + row, from, sums, row);
+        }
+
+        sums.Blur();
+        var whole = Math.Pow(2 * reach + 1, 4);
+        for (var v = firstRow; v < endRow; v++)
+        {
+            for (var u = 0; u < width; u++)
+            {
+                var i = v * width + u;
+                (to[i], sigma[i], knowledge[i]) = (from[i], float.NaN, 0);
+                if (!float.IsNaN(from[i]) && sums.Solve(v - firstRow + halo, u, LeastShare * whole) is var (step, residual, known))
+                {
+                    // Slope, gain and offset took three parameters from the residual's freedom.
+                    var noise = residual / (1 - 3 * energy) * pictures.NoiseFactor;
+                    (to[i], sigma[i], knowledge[i]) = (from[i] + (float)Math.Clamp(step, -0.5, 0.5), (float)Math.Sqrt(noise / known * energy), (float)known);
+                }
+            }
+        }
+    }
+
+    private sealed class Pictures
+    {
+        private readonly RectifiedPair pair;
+        private readonly CubicSpline right;
+        private readonly float[] slopes;
+
+        public Pictures(WorkingMap map, ParallelOptions options)
+        {
+            pair = map.Pair;
+            right = CubicSpline.Through(pair.Right.GreyMemory, Size);
+            slopes = Slopes(options);
+
+            // Looking up between pixels takes away fine noise, which the residual then misses, but not the coarse noise that moves a match.
+            // A rectified picture was looked up along both axes; the warp looks up the right one along its rows once more.
+            var rectified = pair.Rectification is null ? 1 : NoiseLeft * NoiseLeft;
+            NoiseFactor = 2 / (rectified * (1 + NoiseLeft));
+        }
+
+        public Geometry.PictureSize Size => pair.Size;
+
+        /// <summary>The coarse noise's strength over that of the residual.</summary>
+        public double NoiseFactor { get; }
+
+        /// <summary>Enters the pixels of one row, the right picture warped by their disparities.</summary>
+        public void Enter(int v, float[] disparity, RefinementSums sums, int row)
+        {
+            var width = Size.Width;
+            var grey = pair.Left.Grey;
+            var usable = pair.Right.Usable;
+            for (var u = 0; u < width; u++)
+            {
+                var i = v * width + u;
+                var place = u - disparity[i];
+                if (!(place >= 0 && place <= width - 1) || float.IsNaN(slopes[i])
+                    || (usable is not null && !(usable[(int)place, v] && usable[Math.Min((int)place + 1, width - 1), v])))
+                {
+                    continue;
+                }
+
+                var slope = right.AtByVectors(Math.Min(place + 0.5f, width - 1), v) - right.AtByVectors(Math.Max(place - 0.5f, 0), v);
+                sums.Enter(row, u, slopes[i], slope, grey[i], right.AtByVectors(place, v) - grey[i]);
+            }
+        }
+
+        // The left picture's slope along its rows, in levels a pixel; NaN beside pixels that may not be used.
+        private float[] Slopes(ParallelOptions options)
+        {
+            var (width, height) = (Size.Width, Size.Height);
+            var left = CubicSpline.Through(pair.Left.GreyMemory, Size);
+            var usable = pair.Left.Usable;
+            var values = new float[width * height];
+            Parallel.For(0, height, options, v =>
+            {
+                for (var u = 0; u < width; u++)
+                {
+                    var inside = u > 0 && u < width - 1 && (usable is null || (usable[u - 1, v] && usable[u, v] && usable[u + 1, v]));
+                    values[v * width + u] = inside ? left.AtByVectors(u + 0.5f, v) - left.AtByVectors(u - 0.5f, v) : float.NaN;
+                }
+            });
+            return values;
+        }
+    }
+}
