@@ -4,15 +4,19 @@ using Pairwright.Runner.Commands;
 using Pairwright.Runner.Execution;
 using Spectre.Console.Cli;
 
+string[] names = ["run", "demo-data"];
 var app = new CommandApp();
 app.Configure(config =>
 {
     config.SetApplicationName("pairwright");
     config.SetApplicationVersion(Provenance.Version);
+    config.SetHelpProvider(new HelpText(config.Settings));
     config.PropagateExceptions();
     config.UseStrictParsing();
-    config.AddCommand<RunCommand>("run").WithDescription("Runs a notebook headless and leaves its reports.");
-    config.AddCommand<DemoDataCommand>("demo-data").WithDescription("Writes the demo captures of an invented site, with exact truth.");
+    config.AddCommand<RunCommand>(names[0]).WithDescription("Runs a notebook headless and leaves its reports.")
+        .WithExample("run", "notebooks/commission-rig.ipynb")
+        .WithExample("run", "notebooks/commission-rig.ipynb", "--set", "toleranceMm=2");
+    config.AddCommand<DemoDataCommand>(names[1]).WithDescription("Writes the demo captures of an invented site, with exact truth.");
     config.AddCommand<CellsCommand>(ChildProcess.HiddenCommand).IsHidden();
 });
 
@@ -32,6 +36,6 @@ catch (Exception mistake) when (mistake is BadUsageException or UserErrorExcepti
 }
 catch (CommandAppException mistake)
 {
-    Console.Error.WriteLine($"pairwright: {mistake.Message.TrimEnd('.')}; see pairwright --help.");
+    Console.Error.WriteLine($"pairwright: {mistake.Message.TrimEnd('.')}; see pairwright {(names.Contains(args[0]) ? args[0] + " " : "")}--help.");
     return ExitCode.BadUsage;
 }

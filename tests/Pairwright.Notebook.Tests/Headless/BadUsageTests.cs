@@ -35,6 +35,19 @@ public sealed class BadUsageTests
     }
 
     [Fact]
+    public async Task Without_a_command_the_help_is_printed_and_the_exit_code_is_64_and_0_when_it_was_asked_for()
+    {
+        using var none = await HeadlessRun.Command();
+        using var asked = await HeadlessRun.Command("--help");
+
+        Assert.Equal((64, 0), (none.ExitCode, asked.ExitCode));
+        Assert.Equal(asked.Output, none.Output);
+        Assert.Contains("pairwright run notebooks/commission-rig.ipynb", asked.Output);
+        Assert.Contains("70  the launcher could not build", asked.Output);
+        Assert.Empty(none.Errors);
+    }
+
+    [Fact]
     public async Task A_missing_notebook_exits_with_64_and_leaves_no_report()
     {
         using var run = await HeadlessRun.Command("run", "nowhere.ipynb");

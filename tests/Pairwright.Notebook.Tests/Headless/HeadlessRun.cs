@@ -80,6 +80,8 @@ internal sealed class HeadlessRun : IDisposable
         {
             start.ArgumentList.Add(argument);
         }
+        // A kernel of a few seconds' life earns nothing from watching itself for a better compilation.
+        start.Environment["DOTNET_TieredPGO"] = "0";
         return Process.Start(start)!;
     }
 

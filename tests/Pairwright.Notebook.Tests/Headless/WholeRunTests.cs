@@ -111,12 +111,22 @@ public sealed class WholeRunTests(WholeRun whole) : IClassFixture<WholeRun>
     public void The_executed_notebook_is_valid_nbformat_4_5_by_its_own_validator() => NotebookValidator.Judge(_run.ReportPath("ipynb"));
 
     [Fact]
-    public async Task Running_an_executed_notebook_again_starts_from_its_own_parameters()
+    public async Task An_executed_notebook_run_again_starts_from_its_own_parameters_and_without_a_requirement_says_so()
     {
         using var again = await HeadlessRun.Of(NotebookText.Of([.. _run.Notebook["cells"]!.AsArray().Skip(2).Take(4).Select(cell => cell!.DeepClone().AsObject())]));
 
         Assert.Equal(3, again.Notebook["cells"]!.AsArray().Count);
         Assert.Equal("3|boards|False|13", NotebookCell.TextOf(again.OutputsOf(WholeRun.Parametric)[0]!["text"]));
+        AssertThatNoRequirementIsSaid(again);
+    }
+
+    /// <summary>A run that stated no requirement says so at the top of its page, and cannot pass for a good one in JUnit.</summary>
+    private static void AssertThatNoRequirementIsSaid(HeadlessRun run)
+    {
+        Assert.Equal(0, run.ExitCode);
+        Assert.Equal("1", run.Suite.Attribute("skipped")!.Value);
+        Assert.Single(run.Suite.Elements("testcase"), test => test.Element("skipped") is not null);
+        Assert.InRange(run.Page.IndexOf("stated no requirement", StringComparison.Ordinal), 0, run.Page.IndexOf("<main>", StringComparison.Ordinal));
     }
 
     private string TextOf(int cell) => NotebookCell.TextOf(_run.OutputsOf(cell)[0]!["text"]);
