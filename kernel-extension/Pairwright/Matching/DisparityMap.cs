@@ -81,15 +81,21 @@ public sealed class DisparityMap
     /// <param name="pair">The pair that it belongs to.</param>
     /// <param name="disparity">Disparities in pixels, NaN where there is none; of the pair's size.</param>
     /// <param name="source">Where the values come from, in a few words, for the provenance.</param>
-    /// <remarks>The range reaches from the least to the greatest value; every value counts as measured, with confidence 1.</remarks>
+    /// <param name="confidence">How sure each value is, 0 to 1; 1 for every value when left out.</param>
+    /// <remarks>The range reaches from the least to the greatest value; every value counts as measured.</remarks>
     /// <exception cref="UserErrorException">The sizes differ.</exception>
-    public static DisparityMap FromValues(RectifiedPair pair, ScalarMap disparity, string source)
+    public static DisparityMap FromValues(RectifiedPair pair, ScalarMap disparity, string source, ScalarMap? confidence = null)
     {
         ArgumentNullException.ThrowIfNull(pair);
         ArgumentNullException.ThrowIfNull(disparity);
         if (disparity.Size != pair.Size)
         {
             throw new UserErrorException($"A disparity map of {disparity.Size} px does not fit pictures of {pair.Size} px; give one of their size.");
+        }
+
+        if (confidence is not null && confidence.Size != pair.Size)
+        {
+            throw new UserErrorException($"A map of confidence of {confidence.Size} px does not fit pictures of {pair.Size} px; give one of their size.");
         }
 
         var (least, most) = (0f, 0f);
@@ -105,7 +111,7 @@ public sealed class DisparityMap
             pair,
             Recipe.For(new DisparityRange((int)Math.Floor(least), (int)Math.Ceiling(most))),
             disparity,
-            disparity.Select(value => float.IsNaN(value) ? float.NaN : 1),
+            confidence ?? disparity.Select(value => float.IsNaN(value) ? float.NaN : 1),
             new LabelMap(disparity.Size, labels),
             TimeSpan.Zero,
             pair.Provenance.Then("disparity from elsewhere", source));

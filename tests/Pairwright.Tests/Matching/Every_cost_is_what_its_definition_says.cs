@@ -87,7 +87,7 @@ public class Every_cost_is_what_its_definition_says
     [Fact]
     public void Absolute_difference_and_its_limit()
     {
-        var pair = SmallPairs.Of(3, 1, (u, _) => new[] { 10, 50, 200 }[u], (u, _) => new[] { 13, 40, 100 }[u]);
+        var pair = TestPairs.Pair(3, 1, (u, _) => new[] { 10, 50, 200 }[u], (u, _) => new[] { 13, 40, 100 }[u]);
         Assert.Equal([3, 10, 100], Row(Cost.AbsoluteDifference(), pair, 0, new(0, 0)));
         Assert.Equal([3, 10, 25], Row(Cost.AbsoluteDifference(25), pair, 0, new(0, 0)));
         Assert.Equal([float.PositiveInfinity, 37, 160], Row(Cost.AbsoluteDifference(), pair, 0, new(1, 1)));
@@ -99,7 +99,7 @@ public class Every_cost_is_what_its_definition_says
     {
         // Left 10 20 60, right 16 40 44. Middle: right interval 28 … 42 (half way to 16 and to 44), left interval 15 … 40. The left 20 is 8 below
         // the right interval; the right 40 lies in the left interval, so the smaller distance is 0.
-        var pair = SmallPairs.Of(3, 1, (u, _) => new[] { 10, 20, 60 }[u], (u, _) => new[] { 16, 40, 44 }[u]);
+        var pair = TestPairs.Pair(3, 1, (u, _) => new[] { 10, 20, 60 }[u], (u, _) => new[] { 16, 40, 44 }[u]);
         Assert.Equal(0, Row(Cost.SamplingInsensitiveDifference(), pair, 0, new(0, 0))[1]);
 
         // First: left 10 against the right interval 16 … 28 is 6; right 16 against the left interval 10 … 15 is 1.
@@ -117,7 +117,7 @@ public class Every_cost_is_what_its_definition_says
     [Fact]
     public void The_sampling_insensitive_difference_does_not_see_a_shift_of_half_a_pixel()
     {
-        var pair = SmallPairs.Of(30, 4, (u, _) => 6 * u, (u, _) => 6 * u + 3);
+        var pair = TestPairs.Pair(30, 4, (u, _) => 6 * u, (u, _) => 6 * u + 3);
         Assert.All(Row(Cost.SamplingInsensitiveDifference(), pair, 2, new(0, 0))[1..^1], cost => Assert.Equal(0, cost));
         Assert.All(Row(Cost.AbsoluteDifference(), pair, 2, new(0, 0)), cost => Assert.Equal(3, cost));
     }
@@ -152,7 +152,7 @@ public class Every_cost_is_what_its_definition_says
         // Left at the middle: across (60 − 40) / 2 = 10, down (80 − 20) / 2 = 30. Right: across (70 − 10) / 2 = 30, down (50 − 30) / 2 = 10.
         int[] left = [0, 20, 0, 40, 99, 60, 0, 80, 0];
         int[] right = [0, 30, 0, 10, 7, 70, 0, 50, 0];
-        var pair = SmallPairs.Of(3, 3, (u, v) => left[3 * v + u], (u, v) => right[3 * v + u]);
+        var pair = TestPairs.Pair(3, 3, (u, v) => left[3 * v + u], (u, v) => right[3 * v + u]);
         Assert.Equal(20 + 20, Row(Cost.Gradient(), pair, 1, new(0, 0))[1]);
         Assert.Equal(15, Row(Cost.Gradient(15), pair, 1, new(0, 0))[1]);
 
@@ -181,24 +181,24 @@ public class Every_cost_is_what_its_definition_says
     {
         var step = 1f / (1 << (bits - 8));
         var top = (1 << bits) - 1;
-        var pair = SmallPairs.Of(12, 9, (u, v) => top, (u, v) => top - 1, bits);
+        var pair = TestPairs.Pair(12, 9, (u, v) => top, (u, v) => top - 1, bits);
         Assert.Equal(step, Row(Cost.AbsoluteDifference(), pair, 4, new(0, 0))[6]);
         Assert.Equal(step * step, Row(Cost.Ssd(5), pair, 4, new(0, 0))[6]);
         Assert.Equal((float)(1 - Math.Exp(-step / 10)), Row(Cost.AdCensus(), pair, 4, new(0, 0))[6]);
 
-        var bump = SmallPairs.Of(12, 9, (u, v) => top - (u % 2), (u, v) => top - (v % 2), bits);
-        Assert.Equal(step, Row(Cost.Gradient(), SmallPairs.Of(12, 9, (u, v) => top - (u > 5 ? 2 : u > 4 ? 1 : 0), (u, v) => top, bits), 4, new(0, 0))[5]);
+        var bump = TestPairs.Pair(12, 9, (u, v) => top - (u % 2), (u, v) => top - (v % 2), bits);
+        Assert.Equal(step, Row(Cost.Gradient(), TestPairs.Pair(12, 9, (u, v) => top - (u > 5 ? 2 : u > 4 ? 1 : 0), (u, v) => top, bits), 4, new(0, 0))[5]);
         Assert.True(Row(Cost.Zncc(5), bump, 4, new(0, 0))[6] > 0.5);
         Assert.True(Row(Cost.ZeroMeanSad(5), bump, 4, new(0, 0))[6] > 0.4 * step);
-        Assert.Equal(10, Row(Cost.Rank(5), SmallPairs.Of(12, 9, (u, v) => top - (u % 2), (u, v) => top, bits), 4, new(0, 0))[6]);
-        Assert.True(Row(Cost.CentreSymmetricCensus(5, 5), SmallPairs.Of(12, 9, (u, v) => top - (u > 6 ? 1 : 0), (u, v) => top, bits), 4, new(0, 0))[6] > 0);
+        Assert.Equal(10, Row(Cost.Rank(5), TestPairs.Pair(12, 9, (u, v) => top - (u % 2), (u, v) => top, bits), 4, new(0, 0))[6]);
+        Assert.True(Row(Cost.CentreSymmetricCensus(5, 5), TestPairs.Pair(12, 9, (u, v) => top - (u > 6 ? 1 : 0), (u, v) => top, bits), 4, new(0, 0))[6] > 0);
     }
 
     [Fact]
     public void Costs_do_not_see_what_they_are_made_not_to_see()
     {
         var levels = new Random(4).GetItems(Enumerable.Range(0, 1000).ToArray(), Width * Height);
-        RectifiedPair Changed(int gain, int offset) => SmallPairs.Of(
+        RectifiedPair Changed(int gain, int offset) => TestPairs.Pair(
             Width, Height, (u, v) => levels[v * Width + u], (u, v) => gain * levels[v * Width + u] + offset, bits: 12);
         var (gain, offset, both) = (Changed(3, 0), Changed(1, 500), Changed(3, 700));
         Cost[] blindToBoth = [Cost.Census(5, 5), Cost.Census(9, 7), Cost.CentreSymmetricCensus(), Cost.Rank(), Cost.Zncc()];
@@ -258,7 +258,7 @@ public class Every_cost_is_what_its_definition_says
     private static RectifiedPair Noise(int bits, int seed, int width = Width, int height = Height)
     {
         var random = new Random(seed);
-        return SmallPairs.Of(width, height, (_, _) => random.Next(1 << bits), (_, _) => random.Next(1 << bits), bits);
+        return TestPairs.Pair(width, height, (_, _) => random.Next(1 << bits), (_, _) => random.Next(1 << bits), bits);
     }
 
     // On the 8-bit scale, as all costs see levels.

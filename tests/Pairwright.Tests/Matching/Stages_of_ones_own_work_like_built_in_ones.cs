@@ -12,7 +12,7 @@ public class Stages_of_ones_own_work_like_built_in_ones
     [Fact]
     public void A_cost_on_a_pixel_on_a_row_and_as_a_class_give_one_map()
     {
-        var pair = SmallPairs.Dots(60, 20, Disparity, seed: 11);
+        var pair = TestPairs.RandomDots(60, 20, (_, _) => Disparity, seed: 11);
         var pixel = pair.Match(Recipe with { Cost = Cost.FromPixels((l, r) => Math.Min(Math.Abs(l - r), 90)) });
         var row = pair.Match(Recipe with
         {
@@ -45,7 +45,7 @@ public class Stages_of_ones_own_work_like_built_in_ones
     [InlineData(0)]
     public void A_row_cost_sees_the_stretches_that_negative_disparities_put_together(int disparity)
     {
-        var pair = SmallPairs.Dots(40, 6, disparity);
+        var pair = TestPairs.RandomDots(40, 6, (_, _) => disparity);
         var map = pair.Match(Recipe with
         {
             Range = new(-8, 2),
@@ -69,7 +69,7 @@ public class Stages_of_ones_own_work_like_built_in_ones
     public void Levels_of_a_cell_are_on_the_8_bit_scale_without_loss()
     {
         // 12 bits: a sixteenth of a level. Equal pictures, so the difference of a level with itself is seen only at disparity 0.
-        var pair = SmallPairs.Of(8, 4, (u, v) => 16 * u + v, (u, v) => 16 * u + v, bits: 12);
+        var pair = TestPairs.Pair(8, 4, (u, v) => 16 * u + v, (u, v) => 16 * u + v, bits: 12);
         var seen = new System.Collections.Concurrent.ConcurrentBag<double>();
         pair.Match(Recipe with
         {
@@ -88,7 +88,7 @@ public class Stages_of_ones_own_work_like_built_in_ones
     [Fact]
     public void A_sub_pixel_estimate_a_check_and_a_filter_may_be_code_too()
     {
-        var pair = SmallPairs.Dots(40, 12, Disparity);
+        var pair = TestPairs.RandomDots(40, 12, (_, _) => Disparity);
         var map = pair.Match(Recipe with
         {
             SubPixel = SubPixel.FromTotals((before, lowest, after) => 0.25f),
@@ -122,7 +122,7 @@ public class Stages_of_ones_own_work_like_built_in_ones
     [InlineData(-1, "-1")]
     public void A_cost_that_is_no_cost_is_named_with_its_place(double wrong, string shown)
     {
-        var pair = SmallPairs.Of(12, 5, (u, v) => u == 7 && v == 3 ? 200 : u, (u, _) => u);
+        var pair = TestPairs.Pair(12, 5, (u, v) => u == 7 && v == 3 ? 200 : u, (u, _) => u);
         var sentence = Assert.Throws<UserErrorException>(
             () => pair.Match(Recipe with { Range = new(0, 3), Cost = Cost.FromPixels((l, r) => l == 200 && r == 5 ? wrong : 1) })).Message;
         Assert.Contains($"The cost 'pixels' gave {shown} at column 7 of row 3 for disparity 2", sentence);
@@ -131,7 +131,7 @@ public class Stages_of_ones_own_work_like_built_in_ones
     [Fact]
     public void A_stage_that_throws_is_named()
     {
-        var pair = SmallPairs.Dots(20, 8, 1);
+        var pair = TestPairs.RandomDots(20, 8, (_, _) => 1);
         Recipe[] faulty =
         [
             Recipe with { Cost = Cost.FromPixels((l, r) => throw new InvalidOperationException("no such level")) },
