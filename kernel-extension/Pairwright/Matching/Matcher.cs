@@ -11,7 +11,16 @@ internal static class Matcher
         Require(pair, recipe);
         var watch = Stopwatch.StartNew();
         var map = new WorkingMap(pair, recipe.Range);
-        new PlainMatcher(pair, recipe, settings).Run(map, stop, progress);
+        stop.ThrowIfCancellationRequested();
+        if (!settings.PlainOnly && FusedMatcher.Covers(recipe))
+        {
+            FusedMatcher.Run(pair, recipe, settings, map, stop, progress);
+        }
+        else
+        {
+            new PlainMatcher(pair, recipe, settings).Run(map, stop, progress);
+        }
+
         foreach (var filter in recipe.Filters)
         {
             stop.ThrowIfCancellationRequested();

@@ -10,7 +10,7 @@ public class A_real_pair_is_matched_as_well_as_OpenCV_does(ITestOutputHelper out
     [SkippableFact]
     public void Aloe_over_eight_paths()
     {
-        var aloe = AloePair.Read(first: 480, count: 120);
+        var aloe = AloePair.Read();
         var recipe = Recipe.For(new DisparityRange(0, 239)) with { Optimisation = Optimisation.SemiGlobal(16, 93), Checks = [Check.LeftRight()] };
         var ours = aloe.SharesOf(aloe.Pair.Match(recipe).Disparity.Values);
         var theirs = aloe.SharesOf(aloe.OpenCv(240));
