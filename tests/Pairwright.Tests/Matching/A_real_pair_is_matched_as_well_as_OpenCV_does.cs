@@ -11,7 +11,7 @@ public class A_real_pair_is_matched_as_well_as_OpenCV_does(ITestOutputHelper out
     public void Aloe_over_eight_paths()
     {
         var aloe = AloePair.Read();
-        var recipe = Recipe.For(new DisparityRange(0, 239)) with { Optimisation = Optimisation.SemiGlobal(16, 93), Checks = [Check.LeftRight()] };
+        var recipe = Recipe.For(new DisparityRange(0, 239)) with { Optimisation = Optimisation.SemiGlobal(16, 93), Checks = [Check.LeftRight()], Filters = [Filter.Speckle(), Filter.Median] };
         var ours = aloe.SharesOf(aloe.Pair.Match(recipe).Disparity.Values);
         var theirs = aloe.SharesOf(aloe.OpenCv(240));
         output.WriteLine($"ours:   {ours}");
