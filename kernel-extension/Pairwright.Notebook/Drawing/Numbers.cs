@@ -103,7 +103,13 @@ internal static class Numbers
         return power < -4 || power > 7 ? Scientific(value, digits) : Fixed(value, Math.Max(digits - 1 - power, 0));
     }
 
-    private static string WithUnit(string number, string unit) => unit.Length == 0 ? number : $"{number} {unit}";
+    // The degree sign alone stands against its number (SI brochure, 5.4.3).
+    private static string WithUnit(string number, string unit) => unit switch
+    {
+        "" => number,
+        "°" => number.Contains('±') ? $"({number})°" : number + "°",
+        _ => $"{number} {unit}",
+    };
 
     private static string Raised(int power) =>
         string.Concat(power.ToString(CultureInfo.InvariantCulture).Select(c => c == '-' ? '⁻' : "⁰¹²³⁴⁵⁶⁷⁸⁹"[c - '0']));

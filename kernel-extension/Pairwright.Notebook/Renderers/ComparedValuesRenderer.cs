@@ -57,7 +57,7 @@ internal sealed class ComparedValuesRenderer : Renderer<ComparedValues>
         drawing.Rectangle(At(-1), 4, At(1) - At(-1), bottom - 4, Ink.Met, 0.13);
         drawing.Line(At(0), 4, At(0), bottom, Stroke.Frame);
         drawing.Line(At(-reach), bottom, At(reach), bottom, Stroke.Frame);
-        foreach (var tick in Ticks.Within(-reach, reach, 8))
+        foreach (var tick in Ticks.Within(-reach, reach, 4))
         {
             drawing.Text(At(tick), bottom + 15, Numbers.Significant(tick, 2), Anchor.Middle, colour: Ink.Quiet);
         }

@@ -81,7 +81,8 @@ public static class DemoData
 
         Pictures are named `left_NAME.png` and `right_NAME.png`, 960 × 720 pixels, 8 bits, with lens distortion, blur and noise. `scene.yaml` beside
         them names regions of the left picture and their true values in millimetres: `cup` is the sagitta of the surface across the grain over the
-        plank's width, positive where the middle stands up; `twist` is the distance of the fourth corner from the plane of the other three.
+        plank's width, positive where the edges stand up; `twist` is the distance of the fourth corner from the plane of the other three,
+        positive where, looking along the plank, the far corner at the right stands up.
         `truth-disparity.png` holds the true disparity times {TruthFactor:0} (0: none) at the pixels of the left picture rectified by the true rig, `truth-occluded.png`
         is 255 where the right camera does not see the point. `rig-true.yaml` is the true rig; what a calibration finds differs from it by its uncertainty.
 

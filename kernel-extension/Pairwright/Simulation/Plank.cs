@@ -13,8 +13,8 @@ namespace Pairwright.Simulation;
 /// <param name="LengthMm">Along the grain.</param>
 /// <param name="WidthMm">Across the grain.</param>
 /// <param name="ThicknessMm">At the long edges.</param>
-/// <param name="CupMm">The sagitta across the grain; positive where the middle stands up towards the cameras.</param>
-/// <param name="TwistMm">The distance of the fourth corner from the plane of the other three.</param>
+/// <param name="CupMm">The sagitta across the grain; positive where the edges stand nearer to the cameras than the middle.</param>
+/// <param name="TwistMm">The distance of the fourth corner from the plane of the other three; positive where, looking along the plank with the cameras above, the far corner at the right is raised.</param>
 /// <param name="Seed">Another seed gives another piece of wood.</param>
 public sealed record Plank(string Name, double LengthMm, double WidthMm, double ThicknessMm, double CupMm, double TwistMm, int Seed)
 {
@@ -27,7 +27,7 @@ public sealed record Plank(string Name, double LengthMm, double WidthMm, double 
     public double Height(double x, double y)
     {
         var across = 2 * y / WidthMm;
-        return LiftMm + ThicknessMm + CupMm * (1 - across * across) + TwistMm * x * y / (LengthMm * WidthMm);
+        return LiftMm + ThicknessMm - CupMm * (1 - across * across) - TwistMm * x * y / (LengthMm * WidthMm);
     }
 
     /// <summary>The plank as a thing in a scene.</summary>

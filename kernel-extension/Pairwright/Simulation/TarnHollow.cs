@@ -73,9 +73,9 @@ public static class TarnHollow
     /// <summary>The scenes of planks, by the names of their folders.</summary>
     public static ImmutableArray<(string Name, ImmutableArray<Plank> Planks)> PlankScenes { get; } =
     [
-        ("planks-1", [Sawn(1, 0.6, 0.5), Sawn(2, -0.9, 0.8), Sawn(3, 0.3, -1.0)]),
-        ("planks-2", [Sawn(4, 1.2, 0.4), Sawn(5, 0.0, 0.0), Sawn(6, -0.5, 1.1)]),
-        ("planks-3", [Sawn(7, 2.6, 0.7), Sawn(8, 0.8, 3.4), Sawn(9, -0.4, -0.6)]),
+        ("planks-1", [Sawn(1, -0.6, -0.5), Sawn(2, 0.9, -0.8), Sawn(3, -0.3, 1.0)]),
+        ("planks-2", [Sawn(4, -1.2, -0.4), Sawn(5, 0.0, 0.0), Sawn(6, 0.5, -1.1)]),
+        ("planks-3", [Sawn(7, -2.6, -0.7), Sawn(8, -0.8, -3.4), Sawn(9, 0.4, 0.6)]),
     ];
 
     /// <summary>All captures of the demo, in the order in which they are written.</summary>

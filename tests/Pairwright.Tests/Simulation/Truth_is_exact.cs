@@ -96,7 +96,7 @@ public class Truth_is_exact
         var corners = new[] { (-1, -1), (1, -1), (1, 1), (-1, 1) }.Select(c => plank.Height(c.Item1 * plank.LengthMm / 2, c.Item2 * plank.WidthMm / 2)).ToArray();
 
         // The definitions of cup and twist themselves: the middle over the chord of the edges; the fourth corner over the plane of the others.
-        Assert.Equal(plank.CupMm, plank.Height(0, 0) - (plank.Height(0, plank.WidthMm / 2) + plank.Height(0, -plank.WidthMm / 2)) / 2, 1e-12);
-        Assert.Equal(plank.TwistMm, corners[2] - (corners[1] + corners[3] - corners[0]), 1e-12);
+        Assert.Equal(plank.CupMm, (plank.Height(0, plank.WidthMm / 2) + plank.Height(0, -plank.WidthMm / 2)) / 2 - plank.Height(0, 0), 1e-12);
+        Assert.Equal(-plank.TwistMm, corners[2] - (corners[1] + corners[3] - corners[0]), 1e-12);
     }
 }
