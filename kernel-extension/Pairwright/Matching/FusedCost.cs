@@ -19,7 +19,8 @@ internal sealed record FusedCost(PictureSize Window, byte StandIn, int Small, in
     /// <summary>The cost of a recipe; nothing where it is not one that is fused.</summary>
     public static FusedCost? Of(Recipe recipe)
     {
-        if (recipe.Cost is not CensusCost census || recipe.Aggregation is not NoAggregation || recipe.Optimisation is not SemiGlobal semiGlobal)
+        if (recipe.Cost is not CensusCost census || recipe.Aggregation is not NoAggregation
+            || recipe.Optimisation is not SemiGlobal { Paths: 8, FlatLevels: null, TwoParents: false } semiGlobal)
         {
             return null;
         }

@@ -12,7 +12,7 @@ internal sealed record MatcherSettings
     /// <summary>The width of vectors: 512, 256 or 8 bits; 0 for the one that suits the processor.</summary>
     public int VectorBits { get; init; }
 
-    /// <summary>How many rows a strip of the fused matcher has; as many as memory allows when left out.</summary>
+    /// <summary>How many rows a strip has; as many as memory allows when left out.</summary>
     public int? StripRows { get; init; }
 
     /// <summary>Whether recipes that are fused run on the general path all the same, for comparisons.</summary>

@@ -32,11 +32,22 @@ internal sealed class StageBook(IEnumerable<Stage> ownStages)
             ["census-scale", "difference-scale"],
             entry => Cost.AdCensus(Number(entry, "census-scale"), Number(entry, "difference-scale"))),
         new(StageKind.Aggregation, "none", [], _ => Aggregation.None),
+        new(StageKind.Optimisation, "winner-take-all", [], _ => Optimisation.WinnerTakesAll),
         new(
             StageKind.Optimisation,
             "semi-global",
-            ["small-penalty", "large-penalty"],
-            entry => Optimisation.SemiGlobal(OptionalNumber(entry, "small-penalty"), OptionalNumber(entry, "large-penalty"))),
+            ["paths", "small-penalty", "large-penalty", "flat-levels"],
+            entry => Optimisation.SemiGlobal(
+                OptionalNumber(entry, "small-penalty"),
+                OptionalNumber(entry, "large-penalty"),
+                entry.Optional("paths")?.Whole() ?? 8,
+                OptionalNumber(entry, "flat-levels"))),
+        new(
+            StageKind.Optimisation,
+            "semi-global with two parents",
+            ["small-penalty", "large-penalty", "flat-levels"],
+            entry => Optimisation.SemiGlobalWithTwoParents(
+                OptionalNumber(entry, "small-penalty"), OptionalNumber(entry, "large-penalty"), OptionalNumber(entry, "flat-levels"))),
         new(StageKind.SubPixel, "none", [], _ => SubPixel.None),
         new(StageKind.SubPixel, "parabola", [], _ => SubPixel.Parabola),
         new(StageKind.SubPixel, "equiangular", [], _ => SubPixel.Equiangular),

@@ -1,3 +1,4 @@
+using Pairwright.Imaging;
 using Pairwright.Matching;
 using Xunit;
 
@@ -151,6 +152,66 @@ public class Stages_of_ones_own_work_like_built_in_ones
             var sentence = Assert.Throws<UserErrorException>(() => pair.Match(pairing.First with { Range = new(0, 3) })).Message;
             Assert.Contains(pairing.Second, sentence);
             Assert.DoesNotContain('\n', sentence);
+        });
+    }
+
+    [Fact]
+    public void An_aggregation_and_an_optimisation_of_ones_own_see_the_costs()
+    {
+        // Noise on the dots; the mean over a row's neighbours brings the match out, and the optimisation forbids one disparity.
+        var random = new Random(1);
+        var dots = TestPairs.RandomDots(80, 20, (_, _) => Disparity);
+        var pair = new RectifiedPair(TestPairs.Picture(80, 20, (u, v) => (dots.Left[u, v] + random.Next(150)) / 2), dots.Right);
+        var plain = Recipe with { Cost = Cost.AbsoluteDifference(), Optimisation = Optimisation.WinnerTakesAll, SubPixel = SubPixel.None };
+        double Right(DisparityMap map, int disparity) => map.Disparity.Values.ToArray().Count(d => d == disparity) / (80.0 * 20);
+        var alone = Right(pair.Match(plain), Disparity);
+        var together = Right(pair.Match(plain with { Aggregation = new RowMean() }), Disparity);
+        Assert.True(together > 1.5 * alone, $"{together} is not well above {alone}");
+        Assert.Equal(0, Right(pair.Match(plain with { Aggregation = new RowMean(), Optimisation = new Without(Disparity) }), Disparity));
+        Assert.True(Right(pair.Match(plain with { Aggregation = new RowMean(), Optimisation = new Without(7) }), Disparity) >= together);
+    }
+
+    [Fact]
+    public void What_an_aggregation_or_an_optimisation_does_wrong_is_named()
+    {
+        var pair = TestPairs.RandomDots(20, 8, (_, _) => 1);
+        Assert.Contains("The aggregation 'RowMean' failed", Refusal(Recipe with { Aggregation = new RowMean(at: 400) }));
+        Assert.Contains("The optimisation 'Without' failed", Refusal(Recipe with { Optimisation = new Without(400) }));
+        Assert.Contains("The optimisation 'Without' left a total of NaN", Refusal(Recipe with { Optimisation = new Without(2, float.NaN) }));
+        string Refusal(Recipe recipe) => Assert.Throws<UserErrorException>(() => pair.Match(recipe)).Message;
+    }
+
+    private sealed class RowMean(int at = 0) : Aggregation
+    {
+        public override int? ReachPx => 0;
+
+        public override IAggregator Prepare(RectifiedPair pair) => new Mean(at);
+
+        private sealed class Mean(int at) : IAggregator
+        {
+            public void Apply(CostVolume costs, CancellationToken stop) => costs.ForEachRow(stop, v =>
+            {
+                var before = costs.Row(v).ToArray();
+                var (width, count) = (costs.Size.Width, costs.Range.Count);
+                for (var u = 2; u < width - 2; u++)
+                {
+                    for (var i = 0; i < count; i++)
+                    {
+                        costs.At(u + at, v)[i] = Enumerable.Range(-2, 5).Average(k => before[(u + k) * count + i]);
+                    }
+                }
+            });
+        }
+    }
+
+    private sealed class Without(int disparity, float instead = 1e6f) : Optimisation
+    {
+        public override void Apply(CostVolume costs, CancellationToken stop) => costs.ForEachRow(stop, v =>
+        {
+            for (var u = 0; u < costs.Size.Width; u++)
+            {
+                costs.At(u, v)[disparity - costs.Range.Least] = instead;
+            }
         });
     }
 }
