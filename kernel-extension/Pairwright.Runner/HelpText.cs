@@ -9,17 +9,34 @@ namespace Pairwright.Runner;
 internal sealed class HelpText(ICommandAppSettings settings) : HelpProvider(settings)
 {
     public override IEnumerable<IRenderable> GetFooter(ICommandModel model, ICommandInfo? command) =>
-        command is null or { Name: "run" } ? [new Text(Codes)] : [];
+        command?.Name switch
+        {
+            null => [new Text(RunCodes), new Text(MatchCodes)],
+            "run" => [new Text(RunCodes)],
+            "match" => [new Text(MatchCodes)],
+            _ => [],
+        };
 
-    private static string Codes =>
+    private static string RunCodes =>
         $"""
 
         EXIT CODES OF RUN:
-            {ExitCode.AllMet,2}  all requirements are met, or none was stated
-            {ExitCode.NotAllMet,2}  a requirement is not met or undecided
-            {ExitCode.Stopped,2}  a cell failed, or the run ended early for want of time or memory
-            {ExitCode.BadUsage,2}  the command line or the notebook file makes no sense
-            70  the launcher could not build or install what is needed
+            {ExitCode.AllMet,4}  all requirements are met, or none was stated
+            {ExitCode.NotAllMet,4}  a requirement is not met or undecided
+            {ExitCode.Stopped,4}  a cell failed, or the run ended early for want of time or memory
+            {ExitCode.BadUsage,4}  the command line or the notebook file makes no sense
+              70  the launcher could not build or install what is needed
+
+        """;
+
+    private static string MatchCodes =>
+        $"""
+
+        EXIT CODES OF MATCH:
+            {ExitCode.AllMet,4}  all pairs are matched
+            {ExitCode.Stopped,4}  a pair could not be matched; the others are
+            {ExitCode.BadUsage,4}  the command line or a file makes no sense
+            {ExitCode.Interrupted,4}  stopped; run the same command again to go on
 
         """;
 }

@@ -7,9 +7,6 @@ namespace Pairwright.Runner.Commands;
 /// <summary>Writes the demo captures.</summary>
 internal sealed class DemoDataCommand(IAnsiConsole console) : AsyncCommand<DemoDataSettings>
 {
-    // What a shell expects of a program that was interrupted: 128 + SIGINT.
-    private const int Interrupted = 130;
-
     public override async Task<int> ExecuteAsync(CommandContext context, DemoDataSettings settings, CancellationToken cancellationToken)
     {
         try
@@ -23,7 +20,7 @@ internal sealed class DemoDataCommand(IAnsiConsole console) : AsyncCommand<DemoD
         catch (OperationCanceledException)
         {
             console.WriteLine($"Stopped; what was written to {settings.Folder} is whole, but not all of the demo: run the command again.");
-            return Interrupted;
+            return ExitCode.Interrupted;
         }
 
         console.WriteLine($"The demo is in {settings.Folder}; its README.md tells what is what.");

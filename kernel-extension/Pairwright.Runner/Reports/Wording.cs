@@ -38,6 +38,10 @@ internal static class Wording
         {
             return all == 1 ? "The one requirement is met." : $"All {all} requirements are met.";
         }
+        if (all == 1)
+        {
+            return missed == 1 ? "The one requirement is not met." : "The one requirement is undecided, which counts as not met.";
+        }
         var parts = new List<string>();
         if (missed > 0)
         {

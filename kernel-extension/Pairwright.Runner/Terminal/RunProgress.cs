@@ -12,68 +12,43 @@ internal sealed class RunProgress(IAnsiConsole console, NotebookRun run)
     /// <summary>A log has no width of its own; a row of the table should stay on one line.</summary>
     private const int LogWidth = 160;
 
-    /// <summary>Whether lines can be rewritten and coloured; in a file or a build server's log they cannot.</summary>
-    private readonly bool _live = console.Profile.Capabilities.Interactive && console.Profile.Out.IsTerminal;
+    private readonly LiveLine _line = new(console);
 
     public void Begin()
     {
-        Line($"{Path.GetFileName(run.Document.Path)}: {run.Cells.Count} code cells");
+        _line.Stand($"{Path.GetFileName(run.Document.Path)}: {run.Cells.Count} code cells");
         foreach (var (name, value) in run.Parameters)
         {
-            Line($"  {name} = {value}");
+            _line.Stand($"  {name} = {value}");
         }
-        if (_live)
-        {
-            console.Write(new Text("  starting the kernel …"));
-        }
+        _line.Show("  starting the kernel …");
     }
 
-    public void Started(CellRun cell)
-    {
-        if (_live)
-        {
-            Rewind();
-            console.Write(new Text($"{Place(cell)}  …"));
-        }
-    }
+    public void Started(CellRun cell) => _line.Show($"{Place(cell)}  …");
 
-    public void Ended(CellRun cell)
-    {
-        if (_live)
-        {
-            Rewind();
-        }
-        var good = cell.State == CellState.Done;
-        console.Write(new Text($"{Place(cell)}{Wording.Seconds(cell.Elapsed),10}  "));
-        console.Write(new Text(good ? "✓" : "✗", new Style(good ? Color.Green : Color.Red)));
-        console.WriteLine();
-    }
+    public void Ended(CellRun cell) => _line.Stand($"{Place(cell)}{Wording.Seconds(cell.Elapsed),10}", good: cell.State == CellState.Done);
 
     public void End(ReportFiles files)
     {
-        if (_live)
-        {
-            Rewind();
-        }
-        console.WriteLine();
+        _line.Stand("");
         if (run.Verdicts.Count > 0)
         {
-            if (!_live)
+            if (!_line.IsLive)
             {
                 console.Profile.Width = LogWidth;
             }
             console.Write(Table());
         }
-        Line(Wording.Summary(run));
+        _line.Stand(Wording.Summary(run));
         foreach (var file in files.All)
         {
-            Line($"  {file}");
+            _line.Stand($"  {file}");
         }
     }
 
     private Table Table()
     {
-        var table = new Table { Border = _live ? TableBorder.Rounded : TableBorder.Ascii2 };
+        var table = new Table { Border = _line.IsLive ? TableBorder.Rounded : TableBorder.Ascii2 };
         foreach (var heading in (string[])["requirement", "limit", "measured", "margin", "verdict"])
         {
             table.AddColumn(heading);
@@ -102,10 +77,4 @@ internal sealed class RunProgress(IAnsiConsole console, NotebookRun run)
         var caption = cell.Caption.Length <= CaptionWidth ? cell.Caption : cell.Caption[..(CaptionWidth - 1)] + "…";
         return $"{place,7}  {caption.PadRight(CaptionWidth)}";
     }
-
-    /// <summary>Back to the beginning of the line, and the line away.</summary>
-    private void Rewind() => console.Write(new ControlCode("\r\u001b[2K"));
-
-    /// <summary>A whole line, however wide the terminal: paths must stay in one piece.</summary>
-    private void Line(string text) => console.Profile.Out.Writer.WriteLine(text);
 }

@@ -47,10 +47,13 @@ internal sealed class HeadlessRun : IDisposable
         return run;
     }
 
+    /// <summary>A fresh folder.</summary>
+    public static HeadlessRun Empty() => new(Directory.CreateTempSubdirectory("pairwright-test-").FullName);
+
     /// <summary>A fresh folder with a notebook in it, not yet run.</summary>
     public static HeadlessRun In(JsonObject notebook)
     {
-        var run = new HeadlessRun(Directory.CreateTempSubdirectory("pairwright-test-").FullName);
+        var run = Empty();
         File.WriteAllText(run.NotebookPath, notebook.ToJsonString());
         return run;
     }
@@ -62,7 +65,7 @@ internal sealed class HeadlessRun : IDisposable
     /// <summary>Any command line.</summary>
     public static async Task<HeadlessRun> Command(params string[] arguments)
     {
-        var run = new HeadlessRun(Directory.CreateTempSubdirectory("pairwright-test-").FullName);
+        var run = Empty();
         await run.CommandAsync(arguments);
         return run;
     }

@@ -1,0 +1,60 @@
+using System.Runtime.InteropServices;
+using Pairwright.Runner.Matching;
+using Pairwright.Runner.Terminal;
+using Spectre.Console;
+using Spectre.Console.Cli;
+
+namespace Pairwright.Runner.Commands;
+
+/// <summary>Matches one pair, or all pairs that fit a pattern, and writes their maps.</summary>
+internal sealed class MatchCommand(IAnsiConsole console) : AsyncCommand<MatchSettings>
+{
+    public override async Task<int> ExecuteAsync(CommandContext context, MatchSettings settings, CancellationToken cancellationToken)
+    {
+        var (pairs, alone) = PairFinder.Find(settings);
+        var job = MatchJob.Of(settings);
+        using var interrupt = CancellationTokenSource.CreateLinkedTokenSource(cancellationToken);
+        using var onInterrupt = PosixSignalRegistration.Create(PosixSignal.SIGINT, Interrupt);
+        using var onTerminate = PosixSignalRegistration.Create(PosixSignal.SIGTERM, Interrupt);
+        return await Task.Run(() => Match(pairs, alone, job, interrupt.Token), CancellationToken.None);
+
+        void Interrupt(PosixSignalContext signal)
+        {
+            signal.Cancel = true;
+            interrupt.Cancel();
+        }
+    }
+
+    private int Match(IReadOnlyList<PairFiles> pairs, IReadOnlyList<string> alone, MatchJob job, CancellationToken stop)
+    {
+        var single = pairs.Count == 1 && alone.Count == 0;
+        var progress = new MatchProgress(console, pairs, alone, job);
+        foreach (var files in pairs)
+        {
+            try
+            {
+                stop.ThrowIfCancellationRequested();
+                var madeFrom = PairRecord.MadeFrom(files, job);
+                if (PairRecord.IsDone(files, madeFrom))
+                {
+                    progress.WasThere(files);
+                    continue;
+                }
+
+                var (map, accuracy) = PairMatcher.Match(files, job, stop, progress.Of(files));
+                PairRecord.Write(files, madeFrom, map, accuracy);
+                progress.Done(files, map, accuracy);
+            }
+            catch (OperationCanceledException)
+            {
+                progress.Stopped();
+                return ExitCode.Interrupted;
+            }
+            catch (UserErrorException mistake) when (!single)
+            {
+                progress.Failed(files, mistake.Message);
+            }
+        }
+        return progress.End() ? ExitCode.AllMet : ExitCode.Stopped;
+    }
+}
