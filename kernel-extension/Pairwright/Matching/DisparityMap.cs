@@ -15,8 +15,11 @@ public sealed class DisparityMap
         LabelMap labels,
         TimeSpan elapsed,
         Provenance provenance,
-        ScalarMap? sigma = null) =>
-        (Pair, Recipe, Disparity, Confidence, Labels, Elapsed, Provenance, Sigma) = (pair, recipe, disparity, confidence, labels, elapsed, provenance, sigma);
+        ScalarMap? sigma = null,
+        RowOffset? rowOffset = null)
+    {
+        (Pair, Recipe, Disparity, Confidence, Labels, Elapsed, Provenance, Sigma, RowOffset) = (pair, recipe, disparity, confidence, labels, elapsed, provenance, sigma, rowOffset);
+    }
 
     /// <summary>The pair that was matched.</summary>
     public RectifiedPair Pair { get; }
@@ -51,6 +54,9 @@ public sealed class DisparityMap
     /// <summary>Where it came from.</summary>
     public Provenance Provenance { get; }
 
+    /// <summary>By how much matches miss their common row, where a stage estimated it: what today's pictures say of the rows of the calibration.</summary>
+    public RowOffset? RowOffset { get; }
+
     /// <summary>The share of usable pixels whose disparity was measured, 0 to 1.</summary>
     public double MatchedShare => ShareOfUsable(DisparityLabel.Measured);
 
@@ -74,7 +80,7 @@ public sealed class DisparityMap
             throw new UserErrorException($"A map of uncertainty of {sigma.Size} px does not fit a disparity map of {Size} px; give one of its own size.");
         }
 
-        return new(Pair, Recipe, Disparity, Confidence, Labels, Elapsed, Provenance, sigma);
+        return new(Pair, Recipe, Disparity, Confidence, Labels, Elapsed, Provenance, sigma, RowOffset);
     }
 
     /// <summary>A disparity map whose values come from elsewhere, such as the truth of a simulated capture.</summary>

@@ -12,6 +12,10 @@ namespace Pairwright.Matching;
 /// function has no negative lobe.
 /// </para>
 /// <para>
+/// After the first round the pair's <see cref="RowOffset"/> is estimated, and the right picture looked up that much beside the row: where texture runs aslant, an offset of the rows
+/// would pass for disparity.
+/// </para>
+/// <para>
 /// Before every round the map is smoothed along its surfaces, each pixel by what its window knows. Without that, rounds would sharpen what
 /// windows blur, and with it the noise. Planes pass through smoothing and windows unchanged.
 /// </para>
@@ -79,6 +83,11 @@ internal sealed class LeastSquaresRefinement : Filter
         {
             var from = SurfaceSmoothing.Of(size, refined, round == 0 ? null : knowledge, Window / 2, options);
             var to = refined;
+            if (round > 0)
+            {
+                pictures.Align(from, options);
+            }
+
             Parallel.For(0, (size.Height + BandRows - 1) / BandRows, options, band => Band(band, pictures, from, to, sigma, knowledge));
         }
 
@@ -99,6 +108,7 @@ internal sealed class LeastSquaresRefinement : Filter
         }
 
         map.SigmaArray = sigma;
+        map.RowOffset = pictures.RowOffset;
     }
 
     // Σh² of the weights h with which the pixels' noise enters a disparity after all rounds. With the window's transfer function T and the
@@ -163,14 +173,17 @@ internal sealed class LeastSquaresRefinement : Filter
     private sealed class Pictures
     {
         private readonly RectifiedPair pair;
+        private readonly CubicSpline left;
         private readonly CubicSpline right;
         private readonly float[] slopes;
 
         public Pictures(WorkingMap map, ParallelOptions options)
         {
             pair = map.Pair;
+            left = CubicSpline.Through(pair.Left.GreyMemory, Size);
             right = CubicSpline.Through(pair.Right.GreyMemory, Size);
             slopes = Slopes(options);
+            RowOffset = RowOffset.None(Size);
 
             // Looking up between pixels takes away fine noise, which the residual then misses, but not the coarse noise that moves a match.
             // A rectified picture was looked up along both axes; the warp looks up the right one along its rows once more.
@@ -182,6 +195,12 @@ internal sealed class LeastSquaresRefinement : Filter
 
         /// <summary>The coarse noise's strength over that of the residual.</summary>
         public double NoiseFactor { get; }
+
+        /// <summary>By how much the right picture is looked up beside the row.</summary>
+        public RowOffset RowOffset { get; private set; }
+
+        /// <summary>Estimates the row offset from the disparities so far.</summary>
+        public void Align(float[] disparity, ParallelOptions options) => RowOffset = RowOffsetEstimate.Of(pair, left, right, disparity, RowOffset, options);
 
         /// <summary>Enters the pixels of one row, the right picture warped by their disparities.</summary>
         public void Enter(int v, float[] disparity, RefinementSums sums, int row)
@@ -199,8 +218,9 @@ internal sealed class LeastSquaresRefinement : Filter
                     continue;
                 }
 
-                var slope = right.AtByVectors(Math.Min(place + 0.5f, width - 1), v) - right.AtByVectors(Math.Max(place - 0.5f, 0), v);
-                sums.Enter(row, u, slopes[i], slope, grey[i], right.AtByVectors(place, v) - grey[i]);
+                var at = (float)Math.Clamp(v + RowOffset.At(u, v), 0, Size.Height - 1);
+                var slope = right.AtByVectors(Math.Min(place + 0.5f, width - 1), at) - right.AtByVectors(Math.Max(place - 0.5f, 0), at);
+                sums.Enter(row, u, slopes[i], slope, grey[i], right.AtByVectors(place, at) - grey[i]);
             }
         }
 
@@ -208,7 +228,6 @@ internal sealed class LeastSquaresRefinement : Filter
         private float[] Slopes(ParallelOptions options)
         {
             var (width, height) = (Size.Width, Size.Height);
-            var left = CubicSpline.Through(pair.Left.GreyMemory, Size);
             var usable = pair.Left.Usable;
             var values = new float[width * height];
             Parallel.For(0, height, options, v =>

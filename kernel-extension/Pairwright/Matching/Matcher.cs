@@ -36,7 +36,8 @@ internal static class Matcher
             new(pair.Size, map.LabelArray),
             watch.Elapsed,
             pair.Provenance.Then("match", recipe.ToString()),
-            SigmaOf(map));
+            SigmaOf(map),
+            map.RowOffset);
     }
 
     // A later filter may have dropped or filled what an earlier one measured.

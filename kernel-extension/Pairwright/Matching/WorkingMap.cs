@@ -39,5 +39,7 @@ public sealed class WorkingMap
 
     internal float[]? SigmaArray { get; set; }
 
+    internal RowOffset? RowOffset { get; set; }
+
     internal DisparityLabel[] LabelArray { get; }
 }

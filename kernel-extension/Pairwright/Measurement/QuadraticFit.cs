@@ -75,7 +75,8 @@ public sealed class QuadraticFit
     /// <param name="lengthMm">The length l, above zero; the extent of the points when left out.</param>
     /// <remarks>
     /// Upright, the fourth corner stands h(+,+) − h(+,−) − h(−,+) + h(−,−) = c₄·w·l over the plane of the others; square terms cancel. The
-    /// distance is that over √(1 + slope²) of the plane.
+    /// distance is that over √(1 + slope²) of the plane. A direction across that is off by ε adds 8·c·ε·l/w for a cup c; its error is not part of the
+    /// uncertainty, so state the direction where it is known.
     /// </remarks>
     public MeasuredValue FourthCorner(double? widthMm = null, double? lengthMm = null)
     {
