@@ -105,7 +105,7 @@ internal sealed unsafe class FusedRun<TLanes, TBytes, TWords, TTable> : IDisposa
         public void Continue(Half other)
         {
             var row = new RowMatches(run.pair, run.recipe.Range);
-            using var decision = new FusedDecision<TLanes, TBytes, TWords, TTable>(run.layout, costs, row);
+            using var decision = new FusedDecision<TLanes, TBytes, TWords, TTable>(run.layout, costs, row, run.cost.LargestTotal);
             var (helperCosts, helper) = other.states is null ? default : Sweep(other.forwards);
             using (helperCosts)
             using (helper)

@@ -24,6 +24,10 @@ internal sealed unsafe class FusedSweep<TLanes, TBytes, TWords, TTable> : IDispo
     // Path costs before the first slot and behind the last one are read with their neighbours, and mean nothing.
     private const int Guard = 64;
 
+    // Stored sums come from memory; at some hundred cycles a pixel this is early enough and does not crowd the nearest cache.
+    private const int PixelsAhead = 4;
+    private const int CacheLine = 64;
+
     private readonly FusedLayout layout;
     private readonly FusedCostLine<TLanes, TBytes, TWords, TTable> costs;
     private readonly bool forwards;
@@ -35,6 +39,7 @@ internal sealed unsafe class FusedSweep<TLanes, TBytes, TWords, TTable> : IDispo
     private readonly byte* carriedSlots;
     private readonly byte* carriedLeast;
     private int rowsDone;
+    private int shift;
 
     public FusedSweep(FusedLayout layout, FusedCostLine<TLanes, TBytes, TWords, TTable> costs, bool forwards, int small, int large)
     {
@@ -87,7 +92,7 @@ internal sealed unsafe class FusedSweep<TLanes, TBytes, TWords, TTable> : IDispo
         for (var i = 0; i < layout.Width; i++)
         {
             costs.Fill(Column(i), Cost);
-            Step(i, Sum);
+            Step(i, Sum, past: false);
         }
 
         rowsDone++;
@@ -95,7 +100,7 @@ internal sealed unsafe class FusedSweep<TLanes, TBytes, TWords, TTable> : IDispo
 
     /// <summary>Goes through the next row and stores its sums.</summary>
     /// <param name="v">The row.</param>
-    /// <param name="sums">Where the sums of column 0 go.</param>
+    /// <param name="sums">Where the sums of column 0 go; a multiple of the vector's size.</param>
     public void Store(int v, byte* sums)
     {
         StartRow(v);
@@ -104,12 +109,7 @@ internal sealed unsafe class FusedSweep<TLanes, TBytes, TWords, TTable> : IDispo
         {
             var u = Column(i);
             costs.Fill(u, Cost);
-            Step(i, Sum);
-            var to = sums + u * bytes;
-            for (nint k = 0; k < bytes; k += TLanes.Bytes)
-            {
-                TLanes.StorePast(to + k, TLanes.Load(Sum + k));
-            }
+            Step(i, sums + u * bytes, past: true);
         }
 
         rowsDone++;
@@ -121,12 +121,19 @@ internal sealed unsafe class FusedSweep<TLanes, TBytes, TWords, TTable> : IDispo
         StartRow(v);
         decision.Begin(forwards);
         nint bytes = layout.SumBytes;
+        var ahead = forwards ? PixelsAhead * bytes : -PixelsAhead * bytes;
         for (var i = 0; i < layout.Width; i++)
         {
             var u = Column(i);
+            var there = sums + u * bytes;
+            for (nint k = 0; k < bytes; k += CacheLine)
+            {
+                TLanes.Expect(there + ahead + k);
+            }
+
             costs.Fill(u, Cost);
-            Step(i, Sum);
-            decision.Choose(u, Cost, Sum, sums + u * bytes);
+            Step(i, Sum, past: false);
+            decision.Choose(u, Cost, Sum, there);
         }
 
         rowsDone++;
@@ -144,12 +151,13 @@ internal sealed unsafe class FusedSweep<TLanes, TBytes, TWords, TTable> : IDispo
     private void StartRow(int v)
     {
         costs.Enter(v);
+        shift = rowsDone % layout.Width;
         Clear(along.Start + Guard, along.Start + along.Bytes - 1);
         if (Directions == 3)
         {
             // The diagonals that enter at this row's two ends.
-            ClearSlot(1, Slot(0, -rowsDone));
-            ClearSlot(2, Slot(layout.Width - 1, rowsDone));
+            ClearSlot(1, shift == 0 ? 0 : layout.Width - shift);
+            ClearSlot(2, shift == 0 ? layout.Width - 1 : shift - 1);
         }
     }
 
@@ -165,71 +173,163 @@ internal sealed unsafe class FusedSweep<TLanes, TBytes, TWords, TTable> : IDispo
         *least = 0;
     }
 
-    private int Slot(int i, int shift)
-    {
-        var slot = (i + shift) % layout.Width;
-        return slot < 0 ? slot + layout.Width : slot;
-    }
-
     // All paths of one pixel; i counts columns in the sweep's direction.
-    [MethodImpl(MethodImplOptions.AggressiveInlining)]
-    private void Step(int i, byte* sum)
+    private void Step(int i, byte* sum, bool past)
     {
         var straight = carriedSlots + (long)i * layout.SlotBytes;
-        if (Directions == 3)
+        var here = along.Start + Guard;
+        var hereLeast = along.Start + along.Bytes - 1;
+        if (Directions != 3)
         {
-            // The paths from the row before first: they do not wait for the column before.
-            var behind = layout.Width + Slot(i, -rowsDone % layout.Width);
-            var ahead = 2 * layout.Width + Slot(i, rowsDone % layout.Width);
-            Pair(
-                carriedSlots + (long)behind * layout.SlotBytes, carriedLeast + behind,
-                carriedSlots + (long)ahead * layout.SlotBytes, carriedLeast + ahead, sum, false);
-            Pair(along.Start + Guard, along.Start + along.Bytes - 1, straight, carriedLeast + i, layout.Planes == 1 ? sum : sum + layout.Lanes, layout.Planes == 1);
+            Pair(here, hereLeast, straight, carriedLeast + i, null, sum, past);
+            return;
+        }
+
+        // The diagonals first: they do not wait for the column before.
+        var behind = i - shift < 0 ? i - shift + layout.Width : i - shift;
+        var ahead = i + shift >= layout.Width ? i + shift - layout.Width : i + shift;
+        behind += layout.Width;
+        ahead += 2 * layout.Width;
+        var first = carriedSlots + (long)behind * layout.SlotBytes;
+        var second = carriedSlots + (long)ahead * layout.SlotBytes;
+        if (layout.Planes == 1)
+        {
+            Pair(first, carriedLeast + behind, second, carriedLeast + ahead, null, Sum, false);
+            Pair(here, hereLeast, straight, carriedLeast + i, Sum, sum, past);
         }
         else
         {
-            Pair(along.Start + Guard, along.Start + along.Bytes - 1, straight, carriedLeast + i, sum, false);
+            Pair(first, carriedLeast + behind, second, carriedLeast + ahead, null, sum, past);
+            Pair(here, hereLeast, straight, carriedLeast + i, null, sum + layout.Lanes, past);
+        }
+    }
+
+    private void Pair(byte* first, byte* firstLeast, byte* second, byte* secondLeast, byte* add, byte* sum, bool past)
+    {
+        switch (add != null, past)
+        {
+            case (false, false):
+                Pair<SumAlone>(first, firstLeast, second, secondLeast, add, sum);
+                break;
+            case (true, false):
+                Pair<SumAdded>(first, firstLeast, second, secondLeast, add, sum);
+                break;
+            case (false, true):
+                Pair<SumAlonePast>(first, firstLeast, second, secondLeast, add, sum);
+                break;
+            default:
+                Pair<SumAddedPast>(first, firstLeast, second, secondLeast, add, sum);
+                break;
         }
     }
 
     // Two paths at a time: more would not fit into the registers.
     [MethodImpl(MethodImplOptions.NoInlining | MethodImplOptions.AggressiveOptimization)]
-    private void Pair(byte* first, byte* firstLeast, byte* second, byte* secondLeast, byte* sum, bool add)
+    private void Pair<TSum>(byte* first, byte* firstLeast, byte* second, byte* secondLeast, byte* add, byte* sum)
+        where TSum : struct, ISum
     {
         nint lanes = layout.Lanes;
+        nint bytes = TLanes.Bytes;
         var cost = Cost;
         var (smallPenalty, largePenalty) = (TLanes.All(small), TLanes.All(large));
         var (subtractFirst, subtractSecond) = (TLanes.All(*firstLeast), TLanes.All(*secondLeast));
         var (leastFirst, leastSecond) = (TLanes.All(byte.MaxValue), TLanes.All(byte.MaxValue));
         var (belowFirst, belowSecond) = (TLanes.Load(first - 1), TLanes.Load(second - 1));
-        for (nint k = 0; k < lanes; k += TLanes.Bytes)
+        nint k = 0;
+        for (; k <= lanes - 2 * bytes; k += 2 * bytes)
+        {
+            // The next vector's lower neighbours must be read before this vector is replaced. Two vectors a turn, so that they need not be moved.
+            var own = TLanes.Load(cost + k);
+            var nextFirst = TLanes.Load(first + k + bytes - 1);
+            var addFirst = Follow(first + k, belowFirst, own, smallPenalty, largePenalty, subtractFirst, ref leastFirst);
+            var nextSecond = TLanes.Load(second + k + bytes - 1);
+            var addSecond = Follow(second + k, belowSecond, own, smallPenalty, largePenalty, subtractSecond, ref leastSecond);
+            Put<TSum>(TLanes.Add(addFirst, addSecond), add + k, sum + k);
+
+            own = TLanes.Load(cost + k + bytes);
+            belowFirst = TLanes.Load(first + k + 2 * bytes - 1);
+            addFirst = Follow(first + k + bytes, nextFirst, own, smallPenalty, largePenalty, subtractFirst, ref leastFirst);
+            belowSecond = TLanes.Load(second + k + 2 * bytes - 1);
+            addSecond = Follow(second + k + bytes, nextSecond, own, smallPenalty, largePenalty, subtractSecond, ref leastSecond);
+            Put<TSum>(TLanes.Add(addFirst, addSecond), add + k + bytes, sum + k + bytes);
+        }
+
+        if (k < lanes)
         {
             var own = TLanes.Load(cost + k);
-
-            // The next vector's lower neighbours must be read before this vector is replaced.
-            var nextFirst = TLanes.Load(first + k + TLanes.Bytes - 1);
-            var addFirst = TLanes.Min(belowFirst, TLanes.Load(first + k + 1));
-            addFirst = TLanes.Min(TLanes.AddUpTo255(addFirst, smallPenalty), TLanes.Load(first + k));
-            addFirst = TLanes.Min(TLanes.Subtract(addFirst, subtractFirst), largePenalty);
-            var pathFirst = TLanes.AddUpTo255(addFirst, own);
-            TLanes.Store(first + k, pathFirst);
-            leastFirst = TLanes.Min(leastFirst, pathFirst);
-            belowFirst = nextFirst;
-
-            var nextSecond = TLanes.Load(second + k + TLanes.Bytes - 1);
-            var addSecond = TLanes.Min(belowSecond, TLanes.Load(second + k + 1));
-            addSecond = TLanes.Min(TLanes.AddUpTo255(addSecond, smallPenalty), TLanes.Load(second + k));
-            addSecond = TLanes.Min(TLanes.Subtract(addSecond, subtractSecond), largePenalty);
-            var pathSecond = TLanes.AddUpTo255(addSecond, own);
-            TLanes.Store(second + k, pathSecond);
-            leastSecond = TLanes.Min(leastSecond, pathSecond);
-            belowSecond = nextSecond;
-
-            var both = TLanes.Add(addFirst, addSecond);
-            TLanes.Store(sum + k, add ? TLanes.Add(TLanes.Load(sum + k), both) : both);
+            var addFirst = Follow(first + k, belowFirst, own, smallPenalty, largePenalty, subtractFirst, ref leastFirst);
+            var addSecond = Follow(second + k, belowSecond, own, smallPenalty, largePenalty, subtractSecond, ref leastSecond);
+            Put<TSum>(TLanes.Add(addFirst, addSecond), add + k, sum + k);
         }
 
         *firstLeast = TLanes.Least(leastFirst);
         *secondLeast = TLanes.Least(leastSecond);
+    }
+
+    // One vector of one path (Hirschmüller 2008, equation 13): replaces its costs and gives what it adds to the pixel's own.
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
+    private static TBytes Follow(byte* path, TBytes below, TBytes own, TBytes smallPenalty, TBytes largePenalty, TBytes subtract, ref TBytes least)
+    {
+        var add = TLanes.AddUpTo255(TLanes.Min(below, TLanes.Load(path + 1)), smallPenalty);
+        add = TLanes.Min(TLanes.Subtract(TLanes.Min(add, TLanes.Load(path)), subtract), largePenalty);
+        var cost = TLanes.AddUpTo255(add, own);
+        TLanes.Store(path, cost);
+        least = TLanes.Min(least, cost);
+        return add;
+    }
+
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
+    private static void Put<TSum>(TBytes value, byte* add, byte* sum)
+        where TSum : struct, ISum
+    {
+        if (TSum.IsAdded)
+        {
+            value = TLanes.Add(value, TLanes.Load(add));
+        }
+
+        if (TSum.GoesPast)
+        {
+            TLanes.StorePast(sum, value);
+        }
+        else
+        {
+            TLanes.Store(sum, value);
+        }
+    }
+
+    // Known when the loop is compiled, so that it asks nothing.
+    private interface ISum
+    {
+        static abstract bool IsAdded { get; }
+
+        static abstract bool GoesPast { get; }
+    }
+
+    private readonly struct SumAlone : ISum
+    {
+        public static bool IsAdded => false;
+
+        public static bool GoesPast => false;
+    }
+
+    private readonly struct SumAdded : ISum
+    {
+        public static bool IsAdded => true;
+
+        public static bool GoesPast => false;
+    }
+
+    private readonly struct SumAlonePast : ISum
+    {
+        public static bool IsAdded => false;
+
+        public static bool GoesPast => true;
+    }
+
+    private readonly struct SumAddedPast : ISum
+    {
+        public static bool IsAdded => true;
+
+        public static bool GoesPast => true;
     }
 }

@@ -22,6 +22,9 @@ internal unsafe interface ILanes<TBytes, TWords, TTable>
 
     static abstract void Store(byte* to, TBytes value);
 
+    /// <summary>Says that the bytes at an address will soon be read.</summary>
+    static abstract void Expect(byte* at);
+
     /// <summary>Stores past the caches; the address is a multiple of the vector's size.</summary>
     static abstract void StorePast(byte* to, TBytes value);
 
@@ -67,8 +70,16 @@ internal unsafe interface ILanes<TBytes, TWords, TTable>
 
     static abstract TWords OrWords(TWords a, TWords b);
 
+    static abstract TWords AndWords(TWords a, TWords b);
+
+    /// <summary>The lower 16 bits of the products.</summary>
+    static abstract TWords Multiply(TWords a, TWords b);
+
     static abstract TWords MinWords(TWords a, TWords b);
 
+    static abstract TWords MaxWords(TWords a, TWords b);
+
+    /// <summary><paramref name="a"/> where the mask's word is all ones, <paramref name="b"/> where it is zero.</summary>
     static abstract TWords SelectWords(TWords mask, TWords a, TWords b);
 
     /// <summary>Ones where two words are equal.</summary>

@@ -19,6 +19,15 @@ internal readonly unsafe struct Lanes256 : ILanes<Vector256<byte>, Vector256<ush
     public static void Store(byte* to, Vector256<byte> value) => value.Store(to);
 
     [MethodImpl(MethodImplOptions.AggressiveInlining)]
+    public static void Expect(byte* at)
+    {
+        if (Sse.IsSupported)
+        {
+            Sse.Prefetch0(at);
+        }
+    }
+
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
     public static void StorePast(byte* to, Vector256<byte> value) => value.StoreAlignedNonTemporal(to);
 
     [MethodImpl(MethodImplOptions.AggressiveInlining)]
@@ -95,10 +104,20 @@ internal readonly unsafe struct Lanes256 : ILanes<Vector256<byte>, Vector256<ush
     public static Vector256<ushort> OrWords(Vector256<ushort> a, Vector256<ushort> b) => a | b;
 
     [MethodImpl(MethodImplOptions.AggressiveInlining)]
+    public static Vector256<ushort> AndWords(Vector256<ushort> a, Vector256<ushort> b) => a & b;
+
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
+    public static Vector256<ushort> MaxWords(Vector256<ushort> a, Vector256<ushort> b) => Vector256.Max(a, b);
+
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
+    public static Vector256<ushort> Multiply(Vector256<ushort> a, Vector256<ushort> b) => a * b;
+
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
     public static Vector256<ushort> MinWords(Vector256<ushort> a, Vector256<ushort> b) => Vector256.Min(a, b);
 
     [MethodImpl(MethodImplOptions.AggressiveInlining)]
-    public static Vector256<ushort> SelectWords(Vector256<ushort> mask, Vector256<ushort> a, Vector256<ushort> b) => Vector256.ConditionalSelect(mask, a, b);
+    public static Vector256<ushort> SelectWords(Vector256<ushort> mask, Vector256<ushort> a, Vector256<ushort> b) =>
+        Avx2.IsSupported ? Avx2.BlendVariable(b, a, mask) : Vector256.ConditionalSelect(mask, a, b);
 
     [MethodImpl(MethodImplOptions.AggressiveInlining)]
     public static Vector256<ushort> EqualWords(Vector256<ushort> a, Vector256<ushort> b) => Vector256.Equals(a, b);

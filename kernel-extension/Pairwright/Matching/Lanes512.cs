@@ -22,6 +22,15 @@ internal readonly unsafe struct Lanes512 : ILanes<Vector512<byte>, Vector512<ush
     public static void Store(byte* to, Vector512<byte> value) => value.Store(to);
 
     [MethodImpl(MethodImplOptions.AggressiveInlining)]
+    public static void Expect(byte* at)
+    {
+        if (Sse.IsSupported)
+        {
+            Sse.Prefetch0(at);
+        }
+    }
+
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
     public static void StorePast(byte* to, Vector512<byte> value) => value.StoreAlignedNonTemporal(to);
 
     [MethodImpl(MethodImplOptions.AggressiveInlining)]
@@ -83,6 +92,15 @@ internal readonly unsafe struct Lanes512 : ILanes<Vector512<byte>, Vector512<ush
 
     [MethodImpl(MethodImplOptions.AggressiveInlining)]
     public static Vector512<ushort> OrWords(Vector512<ushort> a, Vector512<ushort> b) => a | b;
+
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
+    public static Vector512<ushort> AndWords(Vector512<ushort> a, Vector512<ushort> b) => a & b;
+
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
+    public static Vector512<ushort> MaxWords(Vector512<ushort> a, Vector512<ushort> b) => Vector512.Max(a, b);
+
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
+    public static Vector512<ushort> Multiply(Vector512<ushort> a, Vector512<ushort> b) => a * b;
 
     [MethodImpl(MethodImplOptions.AggressiveInlining)]
     public static Vector512<ushort> MinWords(Vector512<ushort> a, Vector512<ushort> b) => Vector512.Min(a, b);

@@ -11,6 +11,10 @@ internal readonly unsafe struct Lanes8 : ILanes<byte, ushort, nint>
 
     public static void Store(byte* to, byte value) => *to = value;
 
+    public static void Expect(byte* at)
+    {
+    }
+
     public static void StorePast(byte* to, byte value) => *to = value;
 
     public static byte All(byte value) => value;
@@ -48,6 +52,12 @@ internal readonly unsafe struct Lanes8 : ILanes<byte, ushort, nint>
     public static ushort ShiftLeft(ushort value, int by) => (ushort)(value << by);
 
     public static ushort OrWords(ushort a, ushort b) => (ushort)(a | b);
+
+    public static ushort AndWords(ushort a, ushort b) => (ushort)(a & b);
+
+    public static ushort MaxWords(ushort a, ushort b) => Math.Max(a, b);
+
+    public static ushort Multiply(ushort a, ushort b) => (ushort)(a * b);
 
     public static ushort MinWords(ushort a, ushort b) => Math.Min(a, b);
 

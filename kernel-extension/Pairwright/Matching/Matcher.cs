@@ -10,7 +10,7 @@ internal static class Matcher
     {
         Require(pair, recipe);
         var watch = Stopwatch.StartNew();
-        var map = new WorkingMap(pair, recipe.Range);
+        var map = new WorkingMap(pair, recipe.Range, settings.Threads);
         stop.ThrowIfCancellationRequested();
         if (!settings.PlainOnly && FusedMatcher.Covers(recipe))
         {

@@ -1,13 +1,16 @@
+using System.Runtime.Intrinsics;
 using Pairwright.Imaging;
 
 namespace Pairwright.Matching;
 
 /// <summary>What happens to a row once its winners are known: labels, sub-pixel, checks, and its entry into the map.</summary>
+/// <remarks>Eight columns at a time; the columns that are left over go one by one by the same formulas.</remarks>
 internal static class RowFinish
 {
     public static void Apply(RowMatches row, Recipe recipe, WorkingMap map, CancellationToken stop)
     {
-        StageGuard.Run(recipe.SubPixel, stop, () => Label(row, recipe.SubPixel));
+        StageGuard.Run(recipe.SubPixel, stop, () => recipe.SubPixel.Offsets(row.Before, row.Lowest, row.After, row.Disparity));
+        Label(row);
         foreach (var check in recipe.Checks)
         {
             StageGuard.Run(check, stop, () => check.Apply(row));
@@ -15,41 +18,82 @@ internal static class RowFinish
 
         var width = map.Size.Width;
         var start = row.V * width;
-        for (var u = 0; u < width; u++)
-        {
-            map.LabelArray[start + u] = row.Labels[u];
-            map.DisparityArray[start + u] = row.Labels[u] == DisparityLabel.Measured ? row.Disparity[u] : float.NaN;
-            map.ConfidenceArray[start + u] = Confidence(row.Lowest[u], row.SecondLowest[u]);
-        }
+        row.Labels.CopyTo(map.LabelArray.AsSpan(start));
+        Measured(row, map.DisparityArray.AsSpan(start, width));
+        Confidences(row.Lowest, row.SecondLowest, map.ConfidenceArray.AsSpan(start, width));
     }
 
-    private static void Label(RowMatches row, SubPixel subPixel)
+    // On entry the disparities are offsets from the winners.
+    private static void Label(RowMatches row)
     {
-        var usable = row.Pair.Left.Usable;
-        for (var u = 0; u < row.Winner.Length; u++)
+        var winner = row.Winner;
+        var before = row.Before;
+        var after = row.After;
+        var disparity = row.Disparity;
+        var labels = row.Labels;
+        var u = 0;
+        for (; u <= winner.Length - LabelVectors.Step; u += LabelVectors.Step)
         {
-            row.Labels[u] =
-                usable?[u, row.V] == false ? DisparityLabel.Unusable
-                : row.Winner[u] == RowMatches.None ? DisparityLabel.NoMatch
-                : float.IsNaN(row.Before[u]) || float.IsNaN(row.After[u]) ? DisparityLabel.RangeEnd
+            var (won, below, above) = (Vector256.Create<int>(winner[u..]), Vector256.Create<float>(before[u..]), Vector256.Create<float>(after[u..]));
+            var none = Vector256.Equals(won, Vector256.Create(RowMatches.None));
+            var inside = (Vector256.Equals(below, below) & Vector256.Equals(above, above)).AsInt32();
+            var label = Vector256.ConditionalSelect(inside, Vector256.Create((int)DisparityLabel.Measured), Vector256.Create((int)DisparityLabel.RangeEnd));
+            label = Vector256.ConditionalSelect(none, Vector256.Create((int)DisparityLabel.NoMatch), label);
+            LabelVectors.Store(label, labels, u);
+            var value = Vector256.ConvertToSingle(won) + Vector256.Create<float>(disparity[u..]);
+            Vector256.ConditionalSelect((inside & ~none).AsSingle(), value, Vector256.Create(float.NaN)).CopyTo(disparity[u..]);
+        }
+
+        for (; u < winner.Length; u++)
+        {
+            labels[u] =
+                winner[u] == RowMatches.None ? DisparityLabel.NoMatch
+                : float.IsNaN(before[u]) || float.IsNaN(after[u]) ? DisparityLabel.RangeEnd
                 : DisparityLabel.Measured;
-            row.Disparity[u] = row.Labels[u] == DisparityLabel.Measured
-                ? row.Winner[u] + Offset(subPixel, row.Before[u], row.Lowest[u], row.After[u])
-                : float.NaN;
+            disparity[u] = labels[u] == DisparityLabel.Measured ? winner[u] + disparity[u] : float.NaN;
+        }
+
+        if (row.Pair.Left.Usable is { } usable)
+        {
+            for (u = 0; u < winner.Length; u++)
+            {
+                (labels[u], disparity[u]) = usable[u, row.V] ? (labels[u], disparity[u]) : (DisparityLabel.Unusable, float.NaN);
+            }
         }
     }
 
-    private static float Offset(SubPixel subPixel, float before, float lowest, float after)
+    private static void Measured(RowMatches row, Span<float> map)
     {
-        var offset = subPixel.Offset(before, lowest, after);
+        var disparity = row.Disparity;
+        var labels = row.Labels;
+        var u = 0;
+        for (; u <= labels.Length - LabelVectors.Step; u += LabelVectors.Step)
+        {
+            var measured = LabelVectors.Are(LabelVectors.Load(labels, u), DisparityLabel.Measured);
+            Vector256.ConditionalSelect(measured.AsSingle(), Vector256.Create<float>(disparity[u..]), Vector256.Create(float.NaN)).CopyTo(map[u..]);
+        }
 
-        // A whole pixel leaves room for rounding; more is a mistake of whoever wrote the stage.
-        return Math.Abs(offset) <= 1
-            ? offset
-            : throw new UserErrorException(
-                $"The sub-pixel stage '{subPixel.Name}' gave an offset of {offset} px for the totals {before}, {lowest}, {after}; an offset lies between -0.5 and 0.5 px.");
+        for (; u < labels.Length; u++)
+        {
+            map[u] = labels[u] == DisparityLabel.Measured ? disparity[u] : float.NaN;
+        }
     }
 
     // Two equal totals, zeros included, say nothing; NaN stays NaN.
-    private static float Confidence(float lowest, float second) => second == lowest ? 0 : float.IsPositiveInfinity(second) ? 1 : 1 - lowest / second;
+    private static void Confidences(ReadOnlySpan<float> lowest, ReadOnlySpan<float> second, Span<float> map)
+    {
+        var u = 0;
+        for (; u <= lowest.Length - Vector256<float>.Count; u += Vector256<float>.Count)
+        {
+            var (low, next) = (Vector256.Create(lowest[u..]), Vector256.Create(second[u..]));
+            var confidence = Vector256<float>.One - low / next;
+            confidence = Vector256.ConditionalSelect(Vector256.Equals(next, Vector256.Create(float.PositiveInfinity)), Vector256<float>.One, confidence);
+            Vector256.ConditionalSelect(Vector256.Equals(low, next), Vector256<float>.Zero, confidence).CopyTo(map[u..]);
+        }
+
+        for (; u < lowest.Length; u++)
+        {
+            map[u] = second[u] == lowest[u] ? 0 : float.IsPositiveInfinity(second[u]) ? 1 : 1 - lowest[u] / second[u];
+        }
+    }
 }

@@ -28,4 +28,24 @@ public abstract class SubPixel : Stage
     /// <param name="lowest">The total at the winner, not above the others.</param>
     /// <param name="after">The total at the disparity above.</param>
     public abstract float Offset(float before, float lowest, float after);
+
+    /// <summary>The offsets of a row; anything where a neighbour is NaN.</summary>
+    internal virtual void Offsets(ReadOnlySpan<float> before, ReadOnlySpan<float> lowest, ReadOnlySpan<float> after, Span<float> offsets)
+    {
+        for (var u = 0; u < offsets.Length; u++)
+        {
+            if (float.IsNaN(before[u]) || float.IsNaN(after[u]))
+            {
+                continue;
+            }
+
+            // A whole pixel leaves room for rounding; more is a mistake of whoever wrote the stage.
+            offsets[u] = Offset(before[u], lowest[u], after[u]);
+            if (!(Math.Abs(offsets[u]) <= 1))
+            {
+                throw new UserErrorException(
+                    $"The sub-pixel stage '{Name}' gave an offset of {offsets[u]} px for the totals {before[u]}, {lowest[u]}, {after[u]}; an offset lies between -0.5 and 0.5 px.");
+            }
+        }
+    }
 }

@@ -1,3 +1,5 @@
+using System.Runtime.Intrinsics;
+
 namespace Pairwright.Matching;
 
 /// <summary>Uniqueness of the lowest total; see <see cref="Check.Uniqueness"/>.</summary>
@@ -25,9 +27,19 @@ internal sealed class UniquenessCheck : Check
         var second = row.SecondLowest;
         var labels = row.Labels;
         var factor = (float)(1 + margin);
-        for (var u = 0; u < labels.Length; u++)
+
+        // Equal totals fail at any margin: two zeros are as ambiguous as two large ones.
+        var u = 0;
+        for (; u <= labels.Length - LabelVectors.Step; u += LabelVectors.Step)
         {
-            // Equal totals fail at any margin: two zeros are as ambiguous as two large ones.
+            var label = LabelVectors.Load(labels, u);
+            var stands = Vector256.GreaterThan(Vector256.Create<float>(second[u..]), Vector256.Create<float>(lowest[u..]) * factor).AsInt32();
+            var fails = LabelVectors.Are(label, DisparityLabel.Measured) & ~stands;
+            LabelVectors.Store(Vector256.ConditionalSelect(fails, Vector256.Create((int)DisparityLabel.NoMatch), label), labels, u);
+        }
+
+        for (; u < labels.Length; u++)
+        {
             if (labels[u] == DisparityLabel.Measured && !(second[u] > lowest[u] * factor))
             {
                 labels[u] = DisparityLabel.NoMatch;

@@ -7,9 +7,9 @@ namespace Pairwright.Matching;
 /// <remarks>Row after row, one entry per pixel.</remarks>
 public sealed class WorkingMap
 {
-    internal WorkingMap(RectifiedPair pair, DisparityRange range)
+    internal WorkingMap(RectifiedPair pair, DisparityRange range, int? threads = null)
     {
-        (Pair, Range) = (pair, range);
+        (Pair, Range, Threads) = (pair, range, threads ?? Environment.ProcessorCount);
         DisparityArray = new float[pair.Size.Area];
         ConfidenceArray = new float[pair.Size.Area];
         LabelArray = new DisparityLabel[pair.Size.Area];
@@ -32,6 +32,9 @@ public sealed class WorkingMap
 
     /// <summary>Labels.</summary>
     public Span<DisparityLabel> Labels => LabelArray;
+
+    /// <summary>How many threads may work on it at once.</summary>
+    internal int Threads { get; }
 
     internal float[] DisparityArray { get; }
 
