@@ -10,6 +10,9 @@ internal sealed class AbsoluteDifferenceCost(double? limit) : Cost
 
     public override string Name => "absolute difference";
 
+    /// <summary>The greatest cost; nothing where there is none.</summary>
+    public double? Limit => limit;
+
     public override IReadOnlyList<StageSetting> Settings => limit is { } most ? [Setting("limit", most)] : [];
 
     public override ICostRows Prepare(RectifiedPair pair) =>

@@ -6,7 +6,9 @@ using Pairwright.Imaging;
 namespace Pairwright.Matching;
 
 /// <summary>The census transform of a picture's rows, four bits to a byte, as the fused matcher looks them up.</summary>
-/// <remarks>The bits are those of <see cref="CensusTransform"/> in the same order; plane p holds bits 4p to 4p + 3.</remarks>
+/// <remarks>
+/// The bits are those of <see cref="CensusTransform"/>, or of the centre-symmetric transform, in the same order; plane p holds bits 4p to 4p + 3.
+/// </remarks>
 internal sealed unsafe class CensusNibbles : IDisposable
 {
     private const int Step = 32;
@@ -16,7 +18,8 @@ internal sealed unsafe class CensusNibbles : IDisposable
 
     private readonly Picture picture;
     private readonly bool mirrored;
-    private readonly (int Row, int Column)[] neighbours;
+    private readonly bool masked;
+    private readonly (int Row, int Column, int OtherRow, int OtherColumn)[] comparisons;
     private readonly int windowHeight;
     private readonly int lineWords;
     private readonly AlignedMemory lines;
@@ -24,24 +27,25 @@ internal sealed unsafe class CensusNibbles : IDisposable
 
     /// <param name="picture">The picture.</param>
     /// <param name="window">The window.</param>
+    /// <param name="centreSymmetric">Whether opposite pixels are compared with each other instead of all with the middle.</param>
     /// <param name="mirrored">Whether columns run from right to left.</param>
-    public CensusNibbles(Picture picture, PictureSize window, bool mirrored)
+    public CensusNibbles(Picture picture, PictureSize window, bool centreSymmetric, bool mirrored)
     {
-        (this.picture, this.mirrored, windowHeight) = (picture, mirrored, window.Height);
-        neighbours =
-        [
-            .. from dv in Enumerable.Range(-window.Height / 2, window.Height)
-               from du in Enumerable.Range(-window.Width / 2, window.Width)
-               where (du, dv) != (0, 0)
-               select (dv, mirrored ? -du : du),
-        ];
+        (this.picture, this.mirrored, masked, windowHeight) = (picture, mirrored, !centreSymmetric && picture.Usable is not null, window.Height);
+        var places = from dv in Enumerable.Range(0, window.Height)
+                     from du in Enumerable.Range(-(window.Width / 2), window.Width)
+                     where (du, dv) != (0, window.Height / 2)
+                     select (Row: dv, Column: mirrored ? -du : du);
+        comparisons = centreSymmetric
+            ? [.. places.Take(window.Width * window.Height / 2).Select(place => (place.Row, place.Column, window.Height - 1 - place.Row, -place.Column))]
+            : [.. places.Select(place => (place.Row, place.Column, window.Height / 2, 0))];
         lineWords = picture.Size.Width + Step + 2 * Side;
         lines = new(sizeof(short) * (long)lineWords * windowHeight);
         held = [.. Enumerable.Repeat(-1, windowHeight)];
     }
 
     /// <summary>How many planes a row has.</summary>
-    public int Planes => (neighbours.Length + 3) / 4;
+    public int Planes => (comparisons.Length + 3) / 4;
 
     /// <summary>Fills the planes of a row; up to <see cref="Step"/> columns more than the picture has are written.</summary>
     /// <param name="v">The row.</param>
@@ -58,18 +62,17 @@ internal sealed unsafe class CensusNibbles : IDisposable
 
         for (var u = 0; u < width; u += Step)
         {
-            var middle = rows[windowHeight / 2] + u;
-            var (middleFirst, middleLast) = (Vector256.Load(middle), Vector256.Load(middle + 16));
             for (int plane = 0, next = 0; plane < Planes; plane++)
             {
                 var (first, last) = (Vector256<short>.Zero, Vector256<short>.Zero);
-                for (var bit = 0; bit < 4 && next < neighbours.Length; bit++, next++)
+                for (var bit = 0; bit < 4 && next < comparisons.Length; bit++, next++)
                 {
-                    var (dv, du) = neighbours[next];
-                    var neighbour = rows[dv + windowHeight / 2] + u + du;
+                    var (row, column, otherRow, otherColumn) = comparisons[next];
+                    var here = rows[row] + u + column;
+                    var other = rows[otherRow] + u + otherColumn;
                     var one = Vector256.Create((short)(1 << bit));
-                    first |= Vector256.LessThan(Vector256.Load(neighbour), middleFirst) & one;
-                    last |= Vector256.LessThan(Vector256.Load(neighbour + 16), middleLast) & one;
+                    first |= Vector256.LessThan(Vector256.Load(here), Vector256.Load(other)) & one;
+                    last |= Vector256.LessThan(Vector256.Load(here + 16), Vector256.Load(other + 16)) & one;
                 }
 
                 Vector256.Narrow(first.AsUInt16(), last.AsUInt16()).Store(planes + plane * planeBytes + u);
@@ -99,8 +102,9 @@ internal sealed unsafe class CensusNibbles : IDisposable
             levels[u] ^= short.MinValue;
         }
 
-        if (picture.Usable is { } usable)
+        if (masked)
         {
+            var usable = picture.Usable!;
             for (var u = 0; u < width; u++)
             {
                 levels[u] = usable[u, v] ? levels[u] : short.MaxValue;

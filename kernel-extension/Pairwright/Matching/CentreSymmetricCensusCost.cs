@@ -23,8 +23,11 @@ internal sealed class CentreSymmetricCensusCost : WindowCost
 
     public override IReadOnlyList<StageSetting> Settings => [Setting("width", Window.Width), Setting("height", Window.Height)];
 
-    /// <summary>Half of the bits: each agrees by chance every other time.</summary>
-    public override double Unrelated => Window.Width * Window.Height / 2 / 2.0;
+    /// <summary>How many pairs are compared.</summary>
+    public int Bits => Window.Width * Window.Height / 2;
+
+    /// <summary>Half of the bits, without a fraction: each agrees by chance every other time.</summary>
+    public override double Unrelated => Bits / 2;
 
     public override double Compare(ReadOnlySpan<float> left, ReadOnlySpan<float> right)
     {

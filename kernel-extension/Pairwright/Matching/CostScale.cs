@@ -30,6 +30,8 @@ internal static class CostScale
             }
         }
 
-        return sum > 0 ? sum / count : 1;
+        // Whole where the scale allows it, as penalties are, so that costs of whole levels stay whole.
+        var mean = sum > 0 ? sum / count : 1;
+        return mean >= 4 ? Math.Round(mean) : mean;
     }
 }

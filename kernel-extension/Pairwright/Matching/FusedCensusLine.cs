@@ -21,10 +21,10 @@ internal sealed unsafe class FusedCensusLine<TLanes, TBytes, TWords, TTable> : F
     private readonly int planes;
     private readonly int leftBytes;
 
-    public FusedCensusLine(RectifiedPair pair, FusedLayout layout, PictureSize window, byte standIn)
+    public FusedCensusLine(RectifiedPair pair, FusedLayout layout, byte standIn, PictureSize window, bool centreSymmetric)
         : base(pair, layout, standIn)
     {
-        (leftBits, rightBits) = (new(pair.Left, window, mirrored: false), new(pair.Right, window, mirrored: true));
+        (leftBits, rightBits) = (new(pair.Left, window, centreSymmetric, mirrored: false), new(pair.Right, window, centreSymmetric, mirrored: true));
         planes = leftBits.Planes;
         leftBytes = layout.Width + 64;
         left = AlignedMemory.Filled((long)leftBytes * planes, 0);

@@ -20,19 +20,19 @@ internal sealed unsafe class FusedRun<TLanes, TBytes, TWords, TTable> : IDisposa
     private readonly WorkingMap map;
     private readonly FusedCost cost;
     private readonly FusedLayout layout;
+    private readonly FusedPenalties penalties;
     private readonly RowCounter counter;
     private readonly CancellationToken stop;
     private readonly ParallelOptions threads;
     private readonly Half down;
     private readonly Half up;
 
-    public FusedRun(RectifiedPair pair, Recipe recipe, MatcherSettings settings, WorkingMap map, CancellationToken stop, IProgress<double>? progress)
+    public FusedRun(RectifiedPair pair, Recipe recipe, FusedCost cost, MatcherSettings settings, WorkingMap map, CancellationToken stop, IProgress<double>? progress)
     {
-        (this.pair, this.recipe, this.map, this.stop) = (pair, recipe, map, stop);
-        pair.MustHold(((WindowCost)recipe.Cost).Window);
-        cost = FusedCost.Of(recipe)!;
-        layout = new(pair.Size, recipe.Range, TLanes.Bytes, cost.Paths, cost.Large);
+        (this.pair, this.recipe, this.cost, this.map, this.stop) = (pair, recipe, cost, map, stop);
+        layout = new(pair.Size, recipe.Range, TLanes.Bytes, cost.Paths, cost.LargePenalty);
         var plan = FusedPlan.For(layout, settings, FusedSweep<TLanes, TBytes, TWords, TTable>.StateBytes(layout));
+        penalties = cost.Penalties();
         counter = new(plan.Sweeps * pair.Size.Height, progress);
         threads = new() { MaxDegreeOfParallelism = Math.Min(settings.Threads, 2), CancellationToken = stop };
         var middle = pair.Size.Height / 2;
@@ -50,6 +50,7 @@ internal sealed unsafe class FusedRun<TLanes, TBytes, TWords, TTable> : IDisposa
     {
         down.Dispose();
         up.Dispose();
+        penalties.Dispose();
     }
 
     /// <summary>One direction: its first half of the rows, and then the other direction's.</summary>
@@ -145,8 +146,8 @@ internal sealed unsafe class FusedRun<TLanes, TBytes, TWords, TTable> : IDisposa
 
         private (FusedCostLine<TLanes, TBytes, TWords, TTable> Costs, FusedSweep<TLanes, TBytes, TWords, TTable> Sweep) Sweep(bool forwards)
         {
-            var lines = run.cost.Lines<TLanes, TBytes, TWords, TTable>(run.pair, run.layout);
-            return (lines, new(run.layout, lines, forwards, run.cost.Small, run.cost.Large));
+            var lines = run.cost.Lines<TLanes, TBytes, TWords, TTable>(run.layout);
+            return (lines, new(run.layout, lines, forwards, run.penalties));
         }
 
         private byte* State(int strip) => states!.Start + strip * FusedSweep<TLanes, TBytes, TWords, TTable>.StateBytes(run.layout);

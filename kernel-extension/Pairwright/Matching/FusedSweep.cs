@@ -31,28 +31,36 @@ internal sealed unsafe class FusedSweep<TLanes, TBytes, TWords, TTable> : IDispo
     private readonly FusedLayout layout;
     private readonly FusedCostLine<TLanes, TBytes, TWords, TTable> costs;
     private readonly bool forwards;
-    private readonly byte small;
-    private readonly byte large;
+    private readonly FusedPenalties penalties;
     private readonly AlignedMemory carried;
     private readonly AlignedMemory along;
     private readonly AlignedMemory pixel;
+    private readonly AlignedMemory levels;
     private readonly byte* carriedSlots;
     private readonly byte* carriedLeast;
     private int rowsDone;
     private int shift;
 
-    public FusedSweep(FusedLayout layout, FusedCostLine<TLanes, TBytes, TWords, TTable> costs, bool forwards, int small, int large)
+    public FusedSweep(FusedLayout layout, FusedCostLine<TLanes, TBytes, TWords, TTable> costs, bool forwards, FusedPenalties penalties)
     {
-        (this.layout, this.costs, this.forwards, this.small, this.large) = (layout, costs, forwards, (byte)small, (byte)large);
+        (this.layout, this.costs, this.forwards, this.penalties) = (layout, costs, forwards, penalties);
         carried = AlignedMemory.Filled(layout.CarriedBytes + 2 * Guard, byte.MaxValue);
         carriedSlots = carried.Start + Guard;
         carriedLeast = carriedSlots + (long)Directions * layout.Width * layout.SlotBytes;
         along = AlignedMemory.Filled(layout.SlotBytes + 2 * Guard + 1, byte.MaxValue);
         pixel = AlignedMemory.Filled(layout.Lanes + layout.SumBytes + 2 * Guard, 0);
+        levels = AlignedMemory.Filled(2L * sizeof(ushort) * LevelWords, 0);
     }
 
     /// <summary>How many directions come from the row before.</summary>
     private int Directions => layout.Paths / 2 - 1;
+
+    // Grey levels of the row and of the one before it, each with a zero at either end.
+    private int LevelWords => layout.Width + 2;
+
+    private ushort* Levels => (ushort*)levels.Start + 1;
+
+    private ushort* LevelsBefore => Levels + LevelWords;
 
     private byte* Cost => pixel.Start;
 
@@ -144,6 +152,7 @@ internal sealed unsafe class FusedSweep<TLanes, TBytes, TWords, TTable> : IDispo
         carried.Dispose();
         along.Dispose();
         pixel.Dispose();
+        levels.Dispose();
     }
 
     private int Column(int i) => forwards ? i : layout.Width - 1 - i;
@@ -152,6 +161,13 @@ internal sealed unsafe class FusedSweep<TLanes, TBytes, TWords, TTable> : IDispo
     {
         costs.Enter(v);
         shift = rowsDone % layout.Width;
+        if (penalties.ByDifference != null)
+        {
+            // The first row has none before it, and no use for its levels.
+            penalties.CopyLevels(v, Levels);
+            penalties.CopyLevels(Math.Clamp(forwards ? v - 1 : v + 1, 0, layout.Height - 1), LevelsBefore);
+        }
+
         Clear(along.Start + Guard, along.Start + along.Bytes - 1);
         if (Directions == 3)
         {
@@ -179,9 +195,23 @@ internal sealed unsafe class FusedSweep<TLanes, TBytes, TWords, TTable> : IDispo
         var straight = carriedSlots + (long)i * layout.SlotBytes;
         var here = along.Start + Guard;
         var hereLeast = along.Start + along.Bytes - 1;
+        var hereLarge = penalties.Large;
+        var straightLarge = hereLarge;
+        var behindLarge = hereLarge;
+        var aheadLarge = hereLarge;
+        if (penalties.ByDifference is var byDifference && byDifference != null)
+        {
+            var (u, step) = (Column(i), forwards ? 1 : -1);
+            int level = Levels[u];
+            hereLarge = byDifference[Math.Abs(level - Levels[u - step])];
+            straightLarge = byDifference[Math.Abs(level - LevelsBefore[u])];
+            behindLarge = byDifference[Math.Abs(level - LevelsBefore[u - step])];
+            aheadLarge = byDifference[Math.Abs(level - LevelsBefore[u + step])];
+        }
+
         if (Directions != 3)
         {
-            Pair(here, hereLeast, straight, carriedLeast + i, null, sum, past);
+            Pair(here, hereLeast, hereLarge, straight, carriedLeast + i, straightLarge, null, sum, past);
             return;
         }
 
@@ -194,44 +224,44 @@ internal sealed unsafe class FusedSweep<TLanes, TBytes, TWords, TTable> : IDispo
         var second = carriedSlots + (long)ahead * layout.SlotBytes;
         if (layout.Planes == 1)
         {
-            Pair(first, carriedLeast + behind, second, carriedLeast + ahead, null, Sum, false);
-            Pair(here, hereLeast, straight, carriedLeast + i, Sum, sum, past);
+            Pair(first, carriedLeast + behind, behindLarge, second, carriedLeast + ahead, aheadLarge, null, Sum, false);
+            Pair(here, hereLeast, hereLarge, straight, carriedLeast + i, straightLarge, Sum, sum, past);
         }
         else
         {
-            Pair(first, carriedLeast + behind, second, carriedLeast + ahead, null, sum, past);
-            Pair(here, hereLeast, straight, carriedLeast + i, null, sum + layout.Lanes, past);
+            Pair(first, carriedLeast + behind, behindLarge, second, carriedLeast + ahead, aheadLarge, null, sum, past);
+            Pair(here, hereLeast, hereLarge, straight, carriedLeast + i, straightLarge, null, sum + layout.Lanes, past);
         }
     }
 
-    private void Pair(byte* first, byte* firstLeast, byte* second, byte* secondLeast, byte* add, byte* sum, bool past)
+    private void Pair(byte* first, byte* firstLeast, byte firstLarge, byte* second, byte* secondLeast, byte secondLarge, byte* add, byte* sum, bool past)
     {
         switch (add != null, past)
         {
             case (false, false):
-                Pair<SumAlone>(first, firstLeast, second, secondLeast, add, sum);
+                Pair<SumAlone>(first, firstLeast, firstLarge, second, secondLeast, secondLarge, add, sum);
                 break;
             case (true, false):
-                Pair<SumAdded>(first, firstLeast, second, secondLeast, add, sum);
+                Pair<SumAdded>(first, firstLeast, firstLarge, second, secondLeast, secondLarge, add, sum);
                 break;
             case (false, true):
-                Pair<SumAlonePast>(first, firstLeast, second, secondLeast, add, sum);
+                Pair<SumAlonePast>(first, firstLeast, firstLarge, second, secondLeast, secondLarge, add, sum);
                 break;
             default:
-                Pair<SumAddedPast>(first, firstLeast, second, secondLeast, add, sum);
+                Pair<SumAddedPast>(first, firstLeast, firstLarge, second, secondLeast, secondLarge, add, sum);
                 break;
         }
     }
 
     // Two paths at a time: more would not fit into the registers.
     [MethodImpl(MethodImplOptions.NoInlining | MethodImplOptions.AggressiveOptimization)]
-    private void Pair<TSum>(byte* first, byte* firstLeast, byte* second, byte* secondLeast, byte* add, byte* sum)
+    private void Pair<TSum>(byte* first, byte* firstLeast, byte firstLarge, byte* second, byte* secondLeast, byte secondLarge, byte* add, byte* sum)
         where TSum : struct, ISum
     {
         nint lanes = layout.Lanes;
         nint bytes = TLanes.Bytes;
         var cost = Cost;
-        var (smallPenalty, largePenalty) = (TLanes.All(small), TLanes.All(large));
+        var (small, largeFirst, largeSecond) = (TLanes.All(penalties.Small), TLanes.All(firstLarge), TLanes.All(secondLarge));
         var (subtractFirst, subtractSecond) = (TLanes.All(*firstLeast), TLanes.All(*secondLeast));
         var (leastFirst, leastSecond) = (TLanes.All(byte.MaxValue), TLanes.All(byte.MaxValue));
         var (belowFirst, belowSecond) = (TLanes.Load(first - 1), TLanes.Load(second - 1));
@@ -241,24 +271,24 @@ internal sealed unsafe class FusedSweep<TLanes, TBytes, TWords, TTable> : IDispo
             // The next vector's lower neighbours must be read before this vector is replaced. Two vectors a turn, so that they need not be moved.
             var own = TLanes.Load(cost + k);
             var nextFirst = TLanes.Load(first + k + bytes - 1);
-            var addFirst = Follow(first + k, belowFirst, own, smallPenalty, largePenalty, subtractFirst, ref leastFirst);
+            var addFirst = Follow(first + k, belowFirst, own, small, largeFirst, subtractFirst, ref leastFirst);
             var nextSecond = TLanes.Load(second + k + bytes - 1);
-            var addSecond = Follow(second + k, belowSecond, own, smallPenalty, largePenalty, subtractSecond, ref leastSecond);
+            var addSecond = Follow(second + k, belowSecond, own, small, largeSecond, subtractSecond, ref leastSecond);
             Put<TSum>(TLanes.Add(addFirst, addSecond), add + k, sum + k);
 
             own = TLanes.Load(cost + k + bytes);
             belowFirst = TLanes.Load(first + k + 2 * bytes - 1);
-            addFirst = Follow(first + k + bytes, nextFirst, own, smallPenalty, largePenalty, subtractFirst, ref leastFirst);
+            addFirst = Follow(first + k + bytes, nextFirst, own, small, largeFirst, subtractFirst, ref leastFirst);
             belowSecond = TLanes.Load(second + k + 2 * bytes - 1);
-            addSecond = Follow(second + k + bytes, nextSecond, own, smallPenalty, largePenalty, subtractSecond, ref leastSecond);
+            addSecond = Follow(second + k + bytes, nextSecond, own, small, largeSecond, subtractSecond, ref leastSecond);
             Put<TSum>(TLanes.Add(addFirst, addSecond), add + k + bytes, sum + k + bytes);
         }
 
         if (k < lanes)
         {
             var own = TLanes.Load(cost + k);
-            var addFirst = Follow(first + k, belowFirst, own, smallPenalty, largePenalty, subtractFirst, ref leastFirst);
-            var addSecond = Follow(second + k, belowSecond, own, smallPenalty, largePenalty, subtractSecond, ref leastSecond);
+            var addFirst = Follow(first + k, belowFirst, own, small, largeFirst, subtractFirst, ref leastFirst);
+            var addSecond = Follow(second + k, belowSecond, own, small, largeSecond, subtractSecond, ref leastSecond);
             Put<TSum>(TLanes.Add(addFirst, addSecond), add + k, sum + k);
         }
 
@@ -268,10 +298,10 @@ internal sealed unsafe class FusedSweep<TLanes, TBytes, TWords, TTable> : IDispo
 
     // One vector of one path (Hirschmüller 2008, equation 13): replaces its costs and gives what it adds to the pixel's own.
     [MethodImpl(MethodImplOptions.AggressiveInlining)]
-    private static TBytes Follow(byte* path, TBytes below, TBytes own, TBytes smallPenalty, TBytes largePenalty, TBytes subtract, ref TBytes least)
+    private static TBytes Follow(byte* path, TBytes below, TBytes own, TBytes small, TBytes large, TBytes subtract, ref TBytes least)
     {
-        var add = TLanes.AddUpTo255(TLanes.Min(below, TLanes.Load(path + 1)), smallPenalty);
-        add = TLanes.Min(TLanes.Subtract(TLanes.Min(add, TLanes.Load(path)), subtract), largePenalty);
+        var add = TLanes.AddUpTo255(TLanes.Min(below, TLanes.Load(path + 1)), small);
+        add = TLanes.Min(TLanes.Subtract(TLanes.Min(add, TLanes.Load(path)), subtract), large);
         var cost = TLanes.AddUpTo255(add, own);
         TLanes.Store(path, cost);
         least = TLanes.Min(least, cost);

@@ -12,11 +12,7 @@ internal static class Matcher
         var watch = Stopwatch.StartNew();
         var map = new WorkingMap(pair, recipe.Range, settings.Threads);
         stop.ThrowIfCancellationRequested();
-        if (!settings.PlainOnly && FusedMatcher.Covers(recipe))
-        {
-            FusedMatcher.Run(pair, recipe, settings, map, stop, progress);
-        }
-        else
+        if (settings.PlainOnly || !FusedMatcher.TryRun(pair, recipe, settings, map, stop, progress))
         {
             new PlainMatcher(pair, recipe, settings).Run(map, stop, progress);
         }

@@ -38,8 +38,13 @@ internal sealed class PathPenalties
             return large;
         }
 
-        var difference = Math.Abs(levels[v * width + u] - levels[(v - dv) * width + u - du]);
-        var adapted = difference > flatLevels ? large * flatLevels / difference : large;
+        return LargeAt(Math.Abs(levels[v * width + u] - levels[(v - dv) * width + u - du]));
+    }
+
+    /// <summary>What a larger change costs between two pixels whose grey levels differ by so much, on the 8-bit scale.</summary>
+    public float LargeAt(float difference)
+    {
+        var adapted = levels is not null && difference > flatLevels ? large * flatLevels / difference : large;
         return Math.Max(whole ? MathF.Floor(adapted) : adapted, Small);
     }
 }
