@@ -9,12 +9,13 @@ internal sealed class DemoDataCommand(IAnsiConsole console) : AsyncCommand<DemoD
 {
     public override async Task<int> ExecuteAsync(CommandContext context, DemoDataSettings settings, CancellationToken cancellationToken)
     {
+        using var interruption = new Interruption();
         try
         {
             await console.Progress().StartAsync(async view =>
             {
                 var task = view.AddTask("captures of Tarn Hollow", maxValue: 1);
-                await Task.Run(() => DemoData.Write(settings.Folder, new Share(task), cancellationToken), cancellationToken);
+                await Task.Run(() => DemoData.Write(settings.Folder, new Share(task), interruption.Token), CancellationToken.None);
             });
         }
         catch (OperationCanceledException)

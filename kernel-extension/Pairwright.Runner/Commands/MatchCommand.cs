@@ -1,4 +1,3 @@
-using System.Runtime.InteropServices;
 using Pairwright.Runner.Matching;
 using Pairwright.Runner.Terminal;
 using Spectre.Console;
@@ -13,16 +12,8 @@ internal sealed class MatchCommand(IAnsiConsole console) : AsyncCommand<MatchSet
     {
         var (pairs, alone) = PairFinder.Find(settings);
         var job = MatchJob.Of(settings);
-        using var interrupt = CancellationTokenSource.CreateLinkedTokenSource(cancellationToken);
-        using var onInterrupt = PosixSignalRegistration.Create(PosixSignal.SIGINT, Interrupt);
-        using var onTerminate = PosixSignalRegistration.Create(PosixSignal.SIGTERM, Interrupt);
-        return await Task.Run(() => Match(pairs, alone, job, interrupt.Token), CancellationToken.None);
-
-        void Interrupt(PosixSignalContext signal)
-        {
-            signal.Cancel = true;
-            interrupt.Cancel();
-        }
+        using var interruption = new Interruption();
+        return await Task.Run(() => Match(pairs, alone, job, interruption.Token), CancellationToken.None);
     }
 
     private int Match(IReadOnlyList<PairFiles> pairs, IReadOnlyList<string> alone, MatchJob job, CancellationToken stop)

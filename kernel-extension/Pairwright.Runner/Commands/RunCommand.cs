@@ -1,5 +1,4 @@
 using System.Diagnostics;
-using System.Runtime.InteropServices;
 using Pairwright.Runner.Documents;
 using Pairwright.Runner.Execution;
 using Pairwright.Runner.Reports;
@@ -25,23 +24,23 @@ internal sealed class RunCommand(IAnsiConsole console) : AsyncCommand<RunSetting
         var files = new ReportFiles(run, settings.Out);
         var progress = new RunProgress(console, run);
 
-        using var interrupt = CancellationTokenSource.CreateLinkedTokenSource(cancellationToken);
-        using var onInterrupt = PosixSignalRegistration.Create(PosixSignal.SIGINT, Interrupt);
-        using var onTerminate = PosixSignalRegistration.Create(PosixSignal.SIGTERM, Interrupt);
+        using var interruption = new Interruption();
 
         // Written before the first cell too: whatever happens, no report of an earlier run is left to be taken for this one's.
         files.Write();
         progress.Begin();
         var sinceWrite = Stopwatch.StartNew();
-        await run.RunAsync(Changed, TimeProvider.System, interrupt.Token);
+        try
+        {
+            await run.RunAsync(Changed, TimeProvider.System, interruption.Token);
+        }
+        catch (UserErrorException lost)
+        {
+            progress.Lost(lost.Message);
+            return ExitCode.Stopped;
+        }
         progress.End(files);
         return run.ExitCode;
-
-        void Interrupt(PosixSignalContext signal)
-        {
-            signal.Cancel = true;
-            interrupt.Cancel();
-        }
 
         void Changed(ChildMessageKind kind, CellRun? cell)
         {

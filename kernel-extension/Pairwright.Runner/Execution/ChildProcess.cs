@@ -15,7 +15,7 @@ internal static class ChildProcess
     /// <param name="hear">Called for each message, one at a time.</param>
     /// <param name="clock">What the time limit is measured with.</param>
     /// <param name="interrupt">Ends the child early.</param>
-    /// <returns>How the child ended, after its last message has been heard.</returns>
+    /// <returns>How the child ended, after its last message has been heard. What <paramref name="hear"/> throws ends the child and comes back.</returns>
     public static async Task<ChildEnd> RunAsync(CellJob job, RunLimits limits, Action<ChildMessage> hear, TimeProvider clock, CancellationToken interrupt)
     {
         var pipeName = $"pairwright-{Guid.NewGuid():N}";
@@ -27,13 +27,22 @@ internal static class ChildProcess
         var messages = Channel.CreateBounded<ChildMessage>(64);
         var hearing = Task.Run(async () =>
         {
-            await foreach (var message in messages.Reader.ReadAllAsync())
+            try
             {
-                hear(message);
+                await foreach (var message in messages.Reader.ReadAllAsync())
+                {
+                    hear(message);
+                }
+            }
+            catch (Exception fault)
+            {
+                // Nobody hears any more, so that whoever waits to be heard must not wait for ever.
+                messages.Writer.TryComplete(fault);
+                throw;
             }
         }, CancellationToken.None);
 
-        var watching = WatchAsync(process, limits, clock, interrupt);
+        var watching = WatchAsync(process, limits, clock, hearing, interrupt);
         var reading = ReadMessagesAsync(pipe, process, messages.Writer);
         var texts = Task.WhenAll(
             ReadTextAsync(process.StandardOutput, "stdout", messages.Writer, null),
@@ -90,13 +99,13 @@ internal static class ChildProcess
         }
     }
 
-    private static async Task<ChildEndKind> WatchAsync(Process process, RunLimits limits, TimeProvider clock, CancellationToken interrupt)
+    private static async Task<ChildEndKind> WatchAsync(Process process, RunLimits limits, TimeProvider clock, Task hearing, CancellationToken interrupt)
     {
         var start = clock.GetTimestamp();
         while (!process.HasExited)
         {
             ChildEndKind? reason =
-                interrupt.IsCancellationRequested ? ChildEndKind.Interrupted
+                interrupt.IsCancellationRequested || hearing.IsFaulted ? ChildEndKind.Interrupted
                 : clock.GetElapsedTime(start) >= limits.Time ? ChildEndKind.OutOfTime
                 : ResidentBytes(process) > limits.MemoryBytes ? ChildEndKind.OutOfMemory
                 : null;
@@ -160,9 +169,9 @@ internal static class ChildProcess
                 // Half a line: the child was ended while it wrote.
                 continue;
             }
-            if (message is not null)
+            if (message is not null && !await TryTellAsync(messages, message))
             {
-                await messages.WriteAsync(message, CancellationToken.None);
+                return;
             }
         }
     }
@@ -176,17 +185,24 @@ internal static class ChildProcess
         {
             var text = new string(buffer, 0, count);
             errors?.Add(text);
-            if (!messages.TryWrite(new ChildMessage { Kind = ChildMessageKind.Stream, Stream = name, Text = text }))
+            if (!await TryTellAsync(messages, new ChildMessage { Kind = ChildMessageKind.Stream, Stream = name, Text = text }))
             {
-                try
-                {
-                    await messages.WriteAsync(new ChildMessage { Kind = ChildMessageKind.Stream, Stream = name, Text = text });
-                }
-                catch (ChannelClosedException)
-                {
-                    return;
-                }
+                return;
             }
+        }
+    }
+
+    /// <returns>False where nobody hears any more.</returns>
+    private static async Task<bool> TryTellAsync(ChannelWriter<ChildMessage> messages, ChildMessage message)
+    {
+        try
+        {
+            await messages.WriteAsync(message, CancellationToken.None);
+            return true;
+        }
+        catch (ChannelClosedException)
+        {
+            return false;
         }
     }
 }

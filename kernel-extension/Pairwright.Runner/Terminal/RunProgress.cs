@@ -28,6 +28,13 @@ internal sealed class RunProgress(IAnsiConsole console, NotebookRun run)
 
     public void Ended(CellRun cell) => _line.Stand($"{Place(cell)}{Wording.Seconds(cell.Elapsed),10}", good: cell.State == CellState.Done);
 
+    /// <summary>The reports can no longer be written.</summary>
+    public void Lost(string sentence)
+    {
+        _line.Clear();
+        Console.Error.WriteLine($"pairwright: The run was ended because its reports cannot be kept: {sentence}");
+    }
+
     public void End(ReportFiles files)
     {
         _line.Stand("");

@@ -119,6 +119,27 @@ public sealed class StoppedRunTests
     }
 
     [Fact]
+    public async Task A_run_whose_reports_can_no_longer_be_written_is_ended_and_says_so()
+    {
+        using var run = await HeadlessRun.Of(Of(
+            Code(
+                """
+                using System.IO;
+                // The runner may be writing just now.
+                while (!File.Exists("reports"))
+                {
+                    try { Directory.Delete("reports", recursive: true); File.WriteAllText("reports", "in the way"); }
+                    catch (Exception busy) when (busy is IOException or UnauthorizedAccessException) { }
+                }
+                """),
+            Code("while (true) { Console.WriteLine(\"more and more\"); }")));
+
+        Assert.Equal(2, run.ExitCode);
+        Assert.StartsWith("pairwright: The run was ended because its reports cannot be kept: 'reports/tiny.ipynb' cannot be written", run.Errors.Replace(run.Folder + "/", "", StringComparison.Ordinal));
+        Assert.Single(run.Errors.Trim().Split('\n'));
+    }
+
+    [Fact]
     public async Task An_interrupted_run_ends_its_child_and_keeps_its_report()
     {
         using var run = HeadlessRun.In(Of(Code("Console.WriteLine(\"my number is \" + Environment.ProcessId);"), Code("while (true) { }")));
