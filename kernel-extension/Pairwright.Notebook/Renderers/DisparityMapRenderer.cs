@@ -52,6 +52,7 @@ internal sealed class DisparityMapRenderer : Renderer<DisparityMap>
             ("searched", $"{map.Range.Least} to {map.Range.Most} px"),
             ("median σ of a disparity (random)", map.Sigma is null ? "not known" : Numbers.Text(MapDrawings.Median(map.Sigma), 3, "px")),
             ("errors correlated up to", Numbers.Text(map.CorrelationLengthPx, 0, "px")),
+            ("rows of the two pictures, apart", map.RowOffset is { Windows: > 0 } rows ? $"{Numbers.WithSigma(rows.RmsPx, rows.SigmaPx, "px")} RMS, allowed for" : "not estimated"),
             ("time", Numbers.Significant(map.Elapsed.TotalSeconds, 3, "s")));
         card.Row(
             MapDrawings.Coloured("Disparity", map.Disparity, Ramp.Values, range, "px", canvas => canvas.Line(-0.5, row, map.Size.Width - 0.5, row, new("#ffffff", 1, "5 4"))),
