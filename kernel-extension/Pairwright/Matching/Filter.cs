@@ -37,6 +37,12 @@ public abstract class Filter : Stage
     /// </summary>
     public virtual int? CorrelationLengthPx => null;
 
+    /// <summary>
+    /// For a filter that measures disparities anew: the standard uncertainty of the pull that is left in them, as for
+    /// <see cref="SubPixel.PullSigmaPx"/>. Nothing for one that takes them as they are.
+    /// </summary>
+    public virtual double? PullSigmaPx => null;
+
     /// <summary>Changes disparities and labels.</summary>
     /// <param name="map">The map.</param>
     /// <param name="stop">Asks to stop.</param>

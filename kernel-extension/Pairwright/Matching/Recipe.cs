@@ -45,6 +45,12 @@ public sealed record Recipe
     /// </summary>
     public int CorrelationLengthPx => Filters.Select(filter => filter.CorrelationLengthPx).LastOrDefault(length => length is not null) ?? 2 * Cost.SupportPx;
 
+    /// <summary>
+    /// The standard uncertainty, in pixels, of the pull of disparities towards or away from whole pixels: an error that all pixels of a surface at
+    /// one depth share, so that no number of them averages it away.
+    /// </summary>
+    public double PullSigmaPx => Filters.Select(filter => filter.PullSigmaPx).LastOrDefault(pull => pull is not null) ?? SubPixel.PullSigmaPx;
+
     /// <summary>The usual recipe over a range of disparities.</summary>
     public static Recipe For(DisparityRange range) => new(range);
 

@@ -23,6 +23,12 @@ public abstract class SubPixel : Stage
         return new CodeSubPixel(offset, code);
     }
 
+    /// <summary>
+    /// The standard uncertainty, in pixels, of the pull that is left: an error that repeats with every whole pixel of disparity. 1/√12, a
+    /// rectangular distribution over a pixel (JCGM 100:2008, 4.3.7), where a stage does not say better.
+    /// </summary>
+    public virtual double PullSigmaPx => 1 / Math.Sqrt(12);
+
     /// <summary>The offset of the lowest point from the whole disparity, −0.5 to 0.5 px.</summary>
     /// <param name="before">The total at the disparity below.</param>
     /// <param name="lowest">The total at the winner, not above the others.</param>

@@ -7,7 +7,7 @@ namespace Pairwright.Measurement;
 /// <remarks>
 /// <para>Z is along the rectified left axis, so that Z = f·b / (d + offset) holds to the letter. Measured points and clouds made from it are in the left camera's own frame.</para>
 /// <para>
-/// The random part of Z at one pixel is Z² / (f·b) times the standard uncertainty of its disparity. The common part comes from meeting the
+/// The random part of Z at one pixel is Z² / (f·b) times the standard uncertainty of its disparity: its σ and the matcher's pull. The common part comes from meeting the
 /// same two raw pixels' rays again with the rig changed along every axis of its covariance.
 /// </para>
 /// </remarks>
@@ -24,6 +24,7 @@ public sealed class DepthMap
     /// <param name="correlationLengthPx">How far the errors of neighbouring disparities are correlated, in pixels, above zero.</param>
     /// <param name="picture">The rectified left picture, for colours.</param>
     /// <param name="provenance">Where it came from.</param>
+    /// <param name="pullSigmaPx">The standard uncertainty of the disparities' pull towards or away from whole pixels, in pixels, zero or above.</param>
     /// <exception cref="UserErrorException">The sizes differ.</exception>
     public DepthMap(
         ScalarMap disparity,
@@ -32,18 +33,20 @@ public sealed class DepthMap
         ScalarMap? disparitySigma = null,
         double correlationLengthPx = 11,
         Picture? picture = null,
-        Provenance? provenance = null)
+        Provenance? provenance = null,
+        double pullSigmaPx = 0)
     {
         ArgumentNullException.ThrowIfNull(disparity);
         ArgumentNullException.ThrowIfNull(geometry);
         ArgumentOutOfRangeException.ThrowIfNegativeOrZero(correlationLengthPx);
+        ArgumentOutOfRangeException.ThrowIfNegative(pullSigmaPx);
         if ((disparitySigma?.Size ?? disparity.Size) != disparity.Size || (picture?.Size ?? disparity.Size) != disparity.Size)
         {
             throw new UserErrorException($"A disparity map of {disparity.Size} px does not go with a σ map or picture of another size; give maps of one size.");
         }
 
-        (Disparity, Geometry, Rectification, DisparitySigma, CorrelationLengthPx, Picture) =
-            (disparity, geometry, rectification, disparitySigma, correlationLengthPx, picture);
+        (Disparity, Geometry, Rectification, DisparitySigma, CorrelationLengthPx, PullSigmaPx, Picture) =
+            (disparity, geometry, rectification, disparitySigma, correlationLengthPx, pullSigmaPx, picture);
         Provenance = provenance ?? Provenance.None;
         z = new(() => disparity.Select(d => (float)geometry.DepthMm(d)));
         sigma = new(() => disparitySigma is null ? null : ScalarMap.From(Size, (u, v) => (float)RandomSigma(u, v)));
@@ -75,6 +78,12 @@ public sealed class DepthMap
 
     /// <summary>How far the errors of neighbouring disparities are correlated, in pixels.</summary>
     public double CorrelationLengthPx { get; }
+
+    /// <summary>
+    /// The standard uncertainty of the disparities' pull towards or away from whole pixels, in pixels: part of the random part, but shared by all
+    /// pixels of a surface at one depth.
+    /// </summary>
+    public double PullSigmaPx { get; }
 
     /// <summary>The rectified left picture, where it is known.</summary>
     public Picture? Picture { get; }
@@ -142,7 +151,10 @@ public sealed class DepthMap
     }
 
     internal double RandomSigma(int u, int v) =>
-        Math.Abs(Geometry.DepthPerDisparity(Geometry.DepthMm(Disparity[u, v]))) * (DisparitySigma?[u, v] ?? double.NaN);
+        Math.Abs(Geometry.DepthPerDisparity(Geometry.DepthMm(Disparity[u, v]))) * RandomSigmaPx(v * Size.Width + u);
+
+    internal double RandomSigmaPx(int index) =>
+        DisparitySigma is { } stated ? Math.Sqrt(stated.Values[index] * stated.Values[index] + PullSigmaPx * PullSigmaPx) : double.NaN;
 
     private MeasuredPoints Select(Func<int, bool> isInside, string where)
     {

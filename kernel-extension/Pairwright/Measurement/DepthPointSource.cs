@@ -13,11 +13,18 @@ internal sealed class DepthPointSource(DepthMap map) : PointSource
 
     public override Vector3D Position(int index) => map.Geometry.PointInLeftCamera(Pixel(index), map.Disparity.Values[index]);
 
+    public override double PullSigmaPx => map.PullSigmaPx;
+
     // A disparity error moves the point along its ray, in proportion to its distance: dP/dd = −P / (d + offset).
+    public override (double Disparity, Vector3D Step) Lever(int index)
+    {
+        var disparity = map.Disparity.Values[index];
+        return (disparity, -1 / (disparity + map.Geometry.OffsetPixels) * Position(index));
+    }
+
     public override Matrix3x3 Covariance(int index)
     {
-        var relative = (map.DisparitySigma?.Values[index] ?? double.NaN) / (map.Disparity.Values[index] + map.Geometry.OffsetPixels);
-        var step = relative * Position(index);
+        var step = map.RandomSigmaPx(index) * Lever(index).Step;
         return Matrix3x3.FromRows(step.X * step, step.Y * step, step.Z * step);
     }
 

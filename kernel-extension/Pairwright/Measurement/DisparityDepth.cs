@@ -15,6 +15,6 @@ public static class DisparityDepth
         var geometry = map.Pair.Geometry ?? throw new UserErrorException(
             "The pair is rectified but its focal length and baseline are not known, so there is disparity but no depth; state the rectified geometry when reading it.");
         var measured = ScalarMap.From(map.Size, (u, v) => map.Labels[u, v] == DisparityLabel.Measured ? map.Disparity[u, v] : float.NaN);
-        return new(measured, geometry, map.Pair.Rectification, map.Sigma, map.CorrelationLengthPx, map.Pair.Left, map.Provenance.Then("depth"));
+        return new(measured, geometry, map.Pair.Rectification, map.Sigma, map.CorrelationLengthPx, map.Pair.Left, map.Provenance.Then("depth"), map.Recipe.PullSigmaPx);
     }
 }

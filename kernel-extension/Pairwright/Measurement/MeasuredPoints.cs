@@ -161,6 +161,29 @@ public sealed class MeasuredPoints
 
     internal Matrix3x3 Covariance(int index) => source.Covariance(indices[index]);
 
+    /// <summary>
+    /// The heights along a direction that the pull of the disparities may add: two patterns, in and out of phase with whole pixels, of one standard
+    /// deviation each. Empty where there is no pull.
+    /// </summary>
+    internal IReadOnlyList<double[]> PullAlong(Vector3D direction)
+    {
+        if (source.PullSigmaPx == 0)
+        {
+            return [];
+        }
+
+        var (cosine, sine) = (new double[Count], new double[Count]);
+        for (var i = 0; i < Count; i++)
+        {
+            var (disparity, step) = source.Lever(indices[i]);
+            var phase = 2 * Math.PI * (disparity - Math.Floor(disparity));
+            var height = source.PullSigmaPx * direction.Dot(step);
+            (cosine[i], sine[i]) = (height * Math.Cos(phase), height * Math.Sin(phase));
+        }
+
+        return [cosine, sine];
+    }
+
     internal double MeanPitchMm => Count == 0 ? 0 : indices.Average(source.PitchMm);
 
     internal PointBlocks Blocks() => PointBlocks.Group([.. indices.Select(source.Place)], CorrelationLengthPx);

@@ -8,7 +8,7 @@ namespace Pairwright.Measurement;
 /// Orthogonal distances (total least squares), reweighted so that wrong matches have no say (Huber's weights first, then Tukey's biweight).
 /// The random part of everything derived from it comes from the scatter over blocks of pixels wider than the correlation of the matcher's
 /// errors (Liang and Zeger 1986); where a region holds too few such blocks, from the stated σ of the disparities with each block wholly
-/// correlated. The common part comes from fitting again with the rig changed along every axis of its covariance.
+/// correlated; what the matcher's pull towards whole pixels may do to the fit is added. The common part comes from fitting again with the rig changed along every axis of its covariance.
 /// </remarks>
 public sealed class PlaneFit
 {
@@ -181,7 +181,7 @@ public sealed class PlaneFit
             heights[i] = plane.Normal.Dot(offset);
         }
 
-        return (x, y, RobustFit.Of(rows, 3, heights, sigmas.Relative, sigmas.Stated, blocks, knownScale));
+        return (x, y, RobustFit.Of(rows, 3, heights, sigmas.Relative, sigmas.Stated, blocks, points.PullAlong(plane.Normal), knownScale));
     }
 
     // The covariance of the normal's random part, in the left camera's frame, radians squared.

@@ -11,6 +11,9 @@ internal abstract class PointSource
     /// <summary>How far the errors of neighbouring points are correlated, in pixels; 0 where they are independent.</summary>
     public abstract double CorrelationLengthPx { get; }
 
+    /// <summary>The standard uncertainty of the disparities' pull towards or away from whole pixels, in pixels; 0 where there is none.</summary>
+    public virtual double PullSigmaPx => 0;
+
     /// <summary>Whether the left pixel is exact, as on the grid of a dense map.</summary>
     public abstract bool OnLeftRay { get; }
 
@@ -25,6 +28,9 @@ internal abstract class PointSource
 
     /// <summary>The raw pixels that were matched.</summary>
     public abstract (RawPixel Left, RawPixel Right) Pair(int index);
+
+    /// <summary>The disparity, in pixels, and how the position moves with it, in millimetres per pixel; only where there is a pull.</summary>
+    public virtual (double Disparity, Vector3D Step) Lever(int index) => (double.NaN, new(double.NaN, double.NaN, double.NaN));
 
     /// <summary>The distance of neighbouring points on a surface that faces the camera there, in millimetres; 0 for single features.</summary>
     public abstract double PitchMm(int index);

@@ -6,7 +6,9 @@ namespace Pairwright.Measurement;
 /// <summary>A surface of second order fitted to measured points, over their own plane.</summary>
 /// <remarks>
 /// With u across, v along and h upright towards the camera, all in millimetres from the points' centroid:
-/// h = c₀ + c₁·u + c₂·v + c₃·u² + c₄·u·v + c₅·v². Weights, random part and common part as for <see cref="PlaneFit"/>.
+/// h = c₀ + c₁·u + c₂·v + c₃·u² + c₄·u·v + c₅·v². Weights, random part and common part as for <see cref="PlaneFit"/>. Where the direction
+/// across is not given it is square to the points' two long edges, and its uncertainty is part of the random part: a cupped plank that is taken
+/// askew seems twisted.
 /// </remarks>
 public sealed class QuadraticFit
 {
@@ -16,10 +18,12 @@ public sealed class QuadraticFit
     private readonly Matrix<double> covariance;
     private readonly Extent across;
     private readonly Extent along;
+    private readonly double turnSigma;
 
-    private QuadraticFit(MeasuredPoints points, RigVariants<Surface> variants, RobustFit fit, Extent across, Extent along, Vector3D acrossDirection)
+    private QuadraticFit(
+        MeasuredPoints points, RigVariants<Surface> variants, RobustFit fit, Extent across, Extent along, Vector3D acrossDirection, double turnSigma)
     {
-        (Points, this.variants, this.across, this.along, Across) = (points, variants, across, along, acrossDirection);
+        (Points, this.variants, this.across, this.along, Across, this.turnSigma) = (points, variants, across, along, acrossDirection, turnSigma);
         (covariance, RandomPartBasis) = (Surface.Unscaled(fit.Covariance, variants.Nominal), fit.Basis);
         OutlierShare = fit.Weights.Count(weight => weight == 0) / (double)points.Count;
     }
@@ -75,8 +79,8 @@ public sealed class QuadraticFit
     /// <param name="lengthMm">The length l, above zero; the extent of the points when left out.</param>
     /// <remarks>
     /// Upright, the fourth corner stands h(+,+) − h(+,−) − h(−,+) + h(−,−) = c₄·w·l over the plane of the others; square terms cancel. The
-    /// distance is that over √(1 + slope²) of the plane. A direction across that is off by ε adds 8·c·ε·l/w for a cup c; its error is not part of the
-    /// uncertainty, so state the direction where it is known.
+    /// distance is that over √(1 + slope²) of the plane. A direction across that is off by ε adds 8·c·ε·l/w for a cup c: where the
+    /// direction is found from the points its uncertainty is part of the random part, where it is given it is taken as exact.
     /// </remarks>
     public MeasuredValue FourthCorner(double? widthMm = null, double? lengthMm = null)
     {
@@ -108,15 +112,15 @@ public sealed class QuadraticFit
 
         var planeFit = PlaneFit.To(points);
         var plane = planeFit.Plane;
-        var given = acrossGrain is { } direction
+        var (given, turnSigma) = acrossGrain is { } direction
             ? plane.InPlane(direction) is null
                 ? throw new UserErrorException("The direction across the grain stands upright on the surface; give one that lies in it.")
-                : direction
+                : (direction, 0)
             : ShortSide(points, planeFit);
         var surface = Surface.Frame(plane, given, points.Positions);
         var rows = surface.Rows(points.Positions);
         var (relative, stated) = PlaneFit.Sigmas(points, plane.Normal);
-        var fit = RobustFit.Of(rows, Terms, [.. points.Positions.Select(plane.Height)], relative, stated, points.Blocks());
+        var fit = RobustFit.Of(rows, Terms, [.. points.Positions.Select(plane.Height)], relative, stated, points.Blocks(), points.PullAlong(plane.Normal));
         surface = surface.With(fit.Coefficients);
 
         var sample = points.Sample;
@@ -132,10 +136,10 @@ public sealed class QuadraticFit
 
         var kept = Enumerable.Range(0, points.Count).Where(i => fit.Weights[i] > 0).Select(i => surface.Place(points.Positions[i])).ToArray();
         var pitch = points.MeanPitchMm;
-        return new(points, variants, fit, Extent.Of(kept, pitch), Extent.Of([.. kept.Select(place => (place.V, place.U))], pitch), surface.U);
+        return new(points, variants, fit, Extent.Of(kept, pitch), Extent.Of([.. kept.Select(place => (place.V, place.U))], pitch), surface.U, turnSigma);
     }
 
-    private static Vector3D ShortSide(MeasuredPoints points, PlaneFit fit)
+    private static (Vector3D Side, double TurnSigma) ShortSide(MeasuredPoints points, PlaneFit fit)
     {
         var (axes, spread) = Plane.Scatter(points.Positions, i => fit.Weights[i], fit.Centroid, fit.Weights.Sum());
 
@@ -147,7 +151,12 @@ public sealed class QuadraticFit
 
         // An axis has no sense of its own: to the right, so that the same plank gives the same signs.
         var side = new Vector3D(axes[0, 1], axes[1, 1], axes[2, 1]);
-        return side.X < 0 ? -side : side;
+        side = side.X < 0 ? -side : side;
+        var lengthwise = fit.Normal.Cross(side);
+        var places = points.Positions.Where((_, i) => fit.Weights[i] > 0).Select(p => (lengthwise.Dot(p - fit.Centroid), side.Dot(p - fit.Centroid)));
+        var edges = LongEdges.Of([.. places], points.MeanPitchMm);
+        var (sine, cosine) = Math.SinCos(edges.Angle);
+        return (cosine * side - sine * lengthwise, edges.Sigma);
     }
 
     private static double FormRms(Surface surface, double width, double length) => Math.Sqrt(Form(surface, width, length).Average(h => h * h));
@@ -173,7 +182,7 @@ public sealed class QuadraticFit
         return [.. heights.Select(height => height - mean)];
     }
 
-    // Value under every rig; random part by the slopes of the quantity in the coefficients and in an extent that was measured.
+    // Value under every rig; random part by the slopes of the quantity in the coefficients, in an extent and in a direction that were measured.
     private MeasuredValue Derive(double? widthMm, double? lengthMm, Func<Surface, double, double, double> quantity)
     {
         if (widthMm is <= 0 or double.NaN || lengthMm is <= 0 or double.NaN)
@@ -195,7 +204,8 @@ public sealed class QuadraticFit
         });
         var ofWidth = (Evaluate(nominal, across.Length + across.Sigma, along.Length) - Evaluate(nominal, across.Length - across.Sigma, along.Length)) / 2;
         var ofLength = (Evaluate(nominal, across.Length, along.Length + along.Sigma) - Evaluate(nominal, across.Length, along.Length - along.Sigma)) / 2;
-        var variance = Math.Max(0, slopes * covariance * slopes) + ofWidth * ofWidth + ofLength * ofLength;
+        var ofTurn = (Evaluate(nominal.Turned(turnSigma), across.Length, along.Length) - Evaluate(nominal.Turned(-turnSigma), across.Length, along.Length)) / 2;
+        var variance = Math.Max(0, slopes * covariance * slopes) + ofWidth * ofWidth + ofLength * ofLength + ofTurn * ofTurn;
         return variants.ToMeasured(surface => Evaluate(surface, across.Length, along.Length), Math.Sqrt(variance), "mm");
     }
 }

@@ -15,6 +15,10 @@ namespace Pairwright.Measurement;
 /// Bell and McCaffrey 2002), times (G − 1)/(G − 3) for G blocks: the variance of Student's t distribution (JCGM 101:2008, 6.4.9.4). With too
 /// few blocks for that it comes from the stated σ of the readings, each block wholly correlated; NaN where none is stated.
 /// </para>
+/// <para>
+/// A pull of the readings, which blocks share, adds what the fit makes of its patterns: with a random phase, an error σ·√2·cos(2πd + φ) has
+/// the covariance σ²·cos(2π(d − d′)), which is that of two independent patterns, σ·cos 2πd and σ·sin 2πd.
+/// </para>
 /// </remarks>
 internal sealed class RobustFit
 {
@@ -34,7 +38,7 @@ internal sealed class RobustFit
     private readonly double[] extents;
     private readonly Lazy<(Matrix<double> Covariance, string Basis)> random;
 
-    private RobustFit(double[] rows, int terms, double[] readings, double[] sigmas, double[]? stated, PointBlocks blocks, double? knownScale)
+    private RobustFit(double[] rows, int terms, double[] readings, double[] sigmas, double[]? stated, PointBlocks blocks, IReadOnlyList<double[]> pull, double? knownScale)
     {
         (this.rows, this.terms, this.readings, this.sigmas) = (rows, terms, readings, sigmas);
         extents = [.. Enumerable.Range(0, terms).Select(term => Enumerable.Range(0, readings.Length).Max(i => Math.Abs(rows[i * terms + term])))];
@@ -42,11 +46,11 @@ internal sealed class RobustFit
         Coefficients = knownScale is null ? Solve(rows, terms, readings, Weights) : new double[terms];
         Scale = knownScale ?? Iterate(HuberWeight, null, 1e-2);
         Iterate(TukeyWeight, Scale, 1e-5);
-        random = new(() => blocks.Count >= terms + LeastSpareBlocks
+        random = new(() => WithPull(pull, blocks.Count >= terms + LeastSpareBlocks
             ? (Sandwich(blocks), blocks.Scatter)
             : stated is null
                 ? (Matrix<double>.Build.Dense(terms, terms, double.NaN), $"nothing: {blocks.Scatter} is too little, and no σ of disparity is stated")
-                : (FromStated(stated, blocks), $"the stated σ of the points, because {blocks.Scatter} is too little"));
+                : (FromStated(stated, blocks), $"the stated σ of the points, because {blocks.Scatter} is too little")));
     }
 
     /// <summary>The parameters.</summary>
@@ -76,10 +80,18 @@ internal sealed class RobustFit
     /// <param name="sigmas">The relative σ of each reading, above zero.</param>
     /// <param name="stated">The stated random σ of each reading, in millimetres; nothing where it is not known.</param>
     /// <param name="blocks">The blocks of readings.</param>
+    /// <param name="pull">Patterns that the matcher's pull may add to the readings, of one standard deviation each; see <see cref="MeasuredPoints.PullAlong"/>.</param>
     /// <param name="knownScale">The scale of the residuals where it is known and the solution is near zero, so that Huber's steps can be left out.</param>
     public static RobustFit Of(
-        double[] rows, int terms, double[] readings, double[] sigmas, double[]? stated, PointBlocks blocks, double? knownScale = null) =>
-        new(rows, terms, readings, sigmas, stated, blocks, knownScale);
+        double[] rows,
+        int terms,
+        double[] readings,
+        double[] sigmas,
+        double[]? stated,
+        PointBlocks blocks,
+        IReadOnlyList<double[]> pull,
+        double? knownScale = null) =>
+        new(rows, terms, readings, sigmas, stated, blocks, pull, knownScale);
 
     /// <summary>The weighted least-squares solution.</summary>
     public static double[] Solve(double[] rows, int terms, double[] readings, double[] weights)
@@ -178,6 +190,14 @@ internal sealed class RobustFit
         return blockSums
             .Select(sum => solver.Solve(Vector<double>.Build.Dense(sum)))
             .Aggregate(Matrix<double>.Build.Dense(terms, terms), (sum, moved) => sum + moved.OuterProduct(moved)) * blocks.BorderFactor;
+    }
+
+    private (Matrix<double> Covariance, string Basis) WithPull(IReadOnlyList<double[]> pull, (Matrix<double> Covariance, string Basis) scatter)
+    {
+        var moved = pull.Select(pattern => Vector<double>.Build.Dense(Solve(rows, terms, pattern, Weights)));
+        return pull.Count == 0
+            ? scatter
+            : (moved.Aggregate(scatter.Covariance, (sum, step) => sum + step.OuterProduct(step)), $"{scatter.Basis}, and the matcher's pull towards whole pixels");
     }
 
     private double Residual(int i)

@@ -54,6 +54,22 @@ internal sealed record Surface
     /// <summary>The surface with one coefficient moved.</summary>
     public Surface Moved(int term, double by) => this with { Coefficients = Coefficients.SetItem(term, Coefficients[term] + by) };
 
+    /// <summary>The coefficients of the same surface for u and v that are turned in the plane, from u towards v, by an angle in radians.</summary>
+    public Surface Turned(double angle)
+    {
+        var ((s, c), k) = (Math.SinCos(angle), Coefficients);
+        return this with
+        {
+            Coefficients =
+            [
+                k[0], k[1] * c + k[2] * s, k[2] * c - k[1] * s,
+                k[3] * c * c + k[4] * c * s + k[5] * s * s,
+                2 * (k[5] - k[3]) * c * s + k[4] * (c * c - s * s),
+                k[3] * s * s - k[4] * c * s + k[5] * c * c,
+            ],
+        };
+    }
+
     /// <summary>The surface with its scales against the spread of the same points with the rig as calibrated.</summary>
     public Surface RelativeTo((double U, double V) reference, IReadOnlyList<Vector3D> points)
     {

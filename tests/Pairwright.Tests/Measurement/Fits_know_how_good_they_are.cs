@@ -142,4 +142,36 @@ public class Fits_know_how_good_they_are
         var spread = Math.Sqrt(pulls.Average(pull => pull * pull));
         Assert.True(covered is > 0.91 and <= 0.992, $"{covered:P1} within 2 σ, pulls of {spread:F2} σ");
     }
+
+    [Theory]
+    [InlineData(0, 0.9, 1.1)]
+    [InlineData(0.4, 0, 1.2)]
+    public void A_pull_towards_whole_pixels_that_no_scatter_shows_is_part_of_the_uncertainty(double slope, double least, double most)
+    {
+        // A matcher's error σ·√2·cos(2πd + φ) with a phase that nobody knows, in steps all around: the spread of the fitted planes is their σ.
+        // On a plane that faces the cameras all of it is there and the scatter shows nothing; on a slanted one most of it averages out.
+        const double sigma = 0.02;
+        const int phases = 24;
+        var geometry = NoisySurface.Geometry(90, 70);
+        var (errors, stated) = (new List<double>(), new List<double>());
+        for (var k = 0; k < phases; k++)
+        {
+            var phase = 2 * Math.PI * (k + 0.3) / phases;
+            var disparity = ScalarMap.From(geometry.Size, (u, v) =>
+            {
+                var d = geometry.Disparity(1003) + slope * (u - 45) / 10;
+                return (float)(d + sigma * Math.Sqrt(2) * Math.Cos(2 * Math.PI * d + phase));
+            });
+            var camera = new Camera(new(600, 600, 45, 35), geometry.Size);
+            var rig = new Rig(camera, camera, new(Matrix3x3.Identity, new(-200, 0, 0)), TestRig.Exact);
+            var depth = new DepthMap(disparity, geometry, new Rectification(rig, geometry), ScalarMap.From(geometry.Size, (_, _) => 0.001f), 7, pullSigmaPx: sigma);
+            var middle = depth.Within(new PixelRegion(5, 5, 80, 60)).FitPlane().CentroidDepth;
+            errors.Add(middle.Value);
+            stated.Add(middle.RandomSigma);
+        }
+
+        var mean = errors.Average();
+        Assert.InRange(Math.Sqrt(errors.Average(value => Math.Pow(value - mean, 2))) / Math.Sqrt(stated.Average(value => value * value)), least, most);
+        Assert.True(slope == 0 || stated.Average() < 0.3 * sigma * 1003 * 1003 / (geometry.FocalPixels * geometry.BaselineMm));
+    }
 }

@@ -59,6 +59,33 @@ public class Planks_are_measured
     }
 
     [Fact]
+    public void A_missing_corner_does_not_make_a_cupped_plank_twisted()
+    {
+        // Principal axes would turn by a degree here, and a cup of 3 mm seen askew would pass for 0.9 mm of twist.
+        var whole = Plank(3, 0, 0, 10);
+        var middle = whole.Centroid;
+        var (across, along) = (Across(10), new Vector3D(0.05, -0.08, -1).Normalized.Cross(Across(10)));
+        var cut = whole.Where(p => across.Dot(p - middle) < 0.25 * Width || along.Dot(p - middle) < 0.25 * Length);
+        Assert.InRange(cut.Count, 0.9 * whole.Count, 0.97 * whole.Count);
+        var twist = cut.FitQuadratic().FourthCorner(Width, Length);
+        Assert.Equal(0, twist.Value, 0.06);
+        Assert.Equal(3, cut.FitQuadratic().SagittaAcross(Width).Value, 0.01);
+        Assert.True(Math.Abs(twist.Value) < 2 * twist.RandomSigma + 0.02);
+    }
+
+    [Fact]
+    public void A_direction_that_was_found_is_part_of_the_uncertainty_and_one_that_was_given_is_not()
+    {
+        // 100 × 40 pixels of 1000/600 mm with a cup of 5 mm: askew by φ it seems twisted by 8·cup·(l/w)·φ = 100 mm·φ, and edges that are known to
+        // half a pixel give φ to a few parts in 10⁴.
+        var map = NoisySurface.Of(120, 60, (_, y) => 1000 - 5 * 4 * y * y / (66.7 * 66.7), 0.002, new Random(5));
+        var points = map.Within(new Pairwright.Imaging.PixelRegion(10, 10, 100, 40));
+        var given = points.FitQuadratic(new Vector3D(0, 1, 0)).FourthCorner().RandomSigma;
+        var found = points.FitQuadratic().FourthCorner().RandomSigma;
+        Assert.InRange(Math.Sqrt(found * found - given * given), 0.02, 0.15);
+    }
+
+    [Fact]
     public void The_width_of_a_dense_region_is_known_to_a_pixel()
     {
         var random = new Random(4);
