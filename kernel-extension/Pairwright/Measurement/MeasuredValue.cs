@@ -98,6 +98,29 @@ public sealed class MeasuredValue
             : values.Aggregate((sum, value) => sum + value) / values.Count;
     }
 
+    /// <summary>The mean of one quantity measured on repeated captures of a scene in which nothing moved.</summary>
+    /// <param name="repeats">At least four values, one from each capture.</param>
+    /// <remarks>
+    /// Such captures share their texture and where it falls on the pixels, and with them a part of each value's random error that no repeat averages out. Only what
+    /// changes between repeats does: of the stated variance u² of one value, the scatter s² between repeats, at most u², falls to s²/n, and u² − s² stays.
+    /// For captures in which the scene lies elsewhere each time use <see cref="Mean"/>.
+    /// </remarks>
+    /// <exception cref="UserErrorException">There are fewer than four values, or their units differ.</exception>
+    public static MeasuredValue MeanOfRepeats(IReadOnlyCollection<MeasuredValue> repeats)
+    {
+        ArgumentNullException.ThrowIfNull(repeats);
+        var n = repeats.Count;
+        if (n < 4)
+        {
+            throw new UserErrorException($"{n} repeated measurements do not tell how they scatter; take at least four.");
+        }
+
+        var mean = Mean(repeats);
+        var stated = repeats.Average(value => value.RandomSigma * value.RandomSigma);
+        var scatter = repeats.Sum(value => (value.Value - mean.Value) * (value.Value - mean.Value)) / (n - 1);
+        return new(mean.Value, Math.Sqrt(stated - (1 - 1.0 / n) * Math.Min(scatter, stated)), mean.Unit, mean.CommonParts);
+    }
+
     /// <summary>The expanded uncertainty, k times the standard uncertainty (JCGM 100:2008, 6.2).</summary>
     /// <param name="coverageFactor">k, above zero; 2 covers about 95 % of a normal distribution.</param>
     public double Expanded(double coverageFactor = 2) => coverageFactor * StandardUncertainty;

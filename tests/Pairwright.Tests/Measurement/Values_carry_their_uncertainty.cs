@@ -108,4 +108,29 @@ public class Values_carry_their_uncertainty
         Assert.Equal("0.5°", 0.5.Degrees().ToString());
         Assert.Equal(-0.25, (new MeasuredValue(24.75, 0.1, 0, "mm") - 25.Millimetres()).Value);
     }
+
+    [Fact]
+    public void What_repeats_of_an_unmoved_scene_share_does_not_average_out()
+    {
+        // 2,000 quantities with an error that all five repeats share and one that changes: the root mean square of error over u of their means is 1 where u is right.
+        // Its own standard deviation is 1/√4000; the scatter of five is so rough that u may be off by a few per cent more.
+        var random = new Random(17);
+        foreach (var (shared, changing) in new[] { (0.03, 0.04), (0.05, 0.0), (0.02, 0.05) })
+        {
+            var stated = Math.Sqrt(shared * shared + changing * changing);
+            var sum = 0.0;
+            for (var trial = 0; trial < 2000; trial++)
+            {
+                var common = shared * TestRig.Gauss(random);
+                var mean = MeasuredValue.MeanOfRepeats([.. Enumerable.Range(0, 5).Select(_ => new MeasuredValue(common + changing * TestRig.Gauss(random), stated, 0, "mm"))]);
+                sum += mean.Value * mean.Value / (mean.RandomSigma * mean.RandomSigma);
+            }
+
+            Assert.InRange(Math.Sqrt(sum / 2000), 0.9, 1.15);
+        }
+    }
+
+    [Fact]
+    public void Three_repeats_are_too_few() =>
+        Assert.Contains("3 repeated", Assert.Throws<UserErrorException>(() => MeasuredValue.MeanOfRepeats([1.0.Millimetres(), 2.0.Millimetres(), 3.0.Millimetres()])).Message, StringComparison.Ordinal);
 }
