@@ -57,4 +57,8 @@ internal sealed class MatchSettings : CommandSettings
     [CommandOption("--truth-scale <LEVELS>")]
     [Description("How many levels of a PNG of true disparities make one pixel; 256 in 16 bits unless given.")]
     public double? TruthScale { get; init; }
+
+    [CommandOption("--memory <MB>")]
+    [Description("The most memory that matching a pair may take beside the pictures; a large pair then goes in strips, with the same result.")]
+    public int? Memory { get; init; }
 }

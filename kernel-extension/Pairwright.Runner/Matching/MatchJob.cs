@@ -12,7 +12,9 @@ namespace Pairwright.Runner.Matching;
 /// <param name="Geometry">Focal length, baseline and offset of pictures that are rectified already, where they are known.</param>
 /// <param name="GeometryFile">The file that either of the two came from.</param>
 /// <param name="TruthScale">How many levels of a PNG of true disparities make one pixel, where it was stated.</param>
-internal sealed record MatchJob(Recipe Recipe, Rectification? Rectification, RectifiedGeometry? Geometry, string? GeometryFile, double? TruthScale)
+/// <param name="MemoryMb">The most memory that matching a pair may take, where it was stated; it changes no result.</param>
+internal sealed record MatchJob(
+    Recipe Recipe, Rectification? Rectification, RectifiedGeometry? Geometry, string? GeometryFile, double? TruthScale, int? MemoryMb)
 {
     /// <exception cref="BadUsageException">Options do not go together, or one does not read.</exception>
     /// <exception cref="UserErrorException">A file cannot be read, or its content is refused.</exception>
@@ -43,7 +45,8 @@ internal sealed record MatchJob(Recipe Recipe, Rectification? Rectification, Rec
             rectification,
             rectification is null ? geometry : null,
             settings.Rig ?? settings.Geometry,
-            settings.TruthScale);
+            settings.TruthScale,
+            settings.Memory);
     }
 
     private static DisparityRange? RangeOf(MatchSettings settings, RectifiedGeometry? geometry)

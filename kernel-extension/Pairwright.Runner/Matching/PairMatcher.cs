@@ -22,7 +22,7 @@ internal static class PairMatcher
                 $"The true disparities '{files.Truth}' are {truth.Disparity.Size} px, but the rectified pair is {pair.Size} px; give those of the rectified left picture.");
         }
 
-        var map = pair.Match(job.Recipe, stop, progress);
+        var map = pair.Match(job.Recipe, stop, progress, job.MemoryMb);
         MapFile.Write(Measured(map), files.Map);
         if (files.Sigma is { } sigma)
         {

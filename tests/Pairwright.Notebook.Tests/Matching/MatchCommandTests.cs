@@ -19,7 +19,7 @@ public sealed class MatchCommandTests : IDisposable
         _folder.AddPair("left.png", "right.png");
         _folder.AddTruth("truth.pfm", MatchFolder.Disparity);
 
-        await _folder.RunAsync("left.png", "right.png", "--range", "-2:12", "--truth", "truth.pfm", "--sigma", "sigma.tif", "--out", "maps/map.pfm");
+        await _folder.RunAsync("left.png", "right.png", "--range", "-2:12", "--truth", "truth.pfm", "--sigma", "sigma.tif", "--memory", "50", "--out", "maps/map.pfm");
 
         Assert.Equal((0, ""), (_folder.ExitCode, _folder.Errors));
         var map = MapFile.Read(_folder["maps/map.pfm"]);
@@ -122,6 +122,7 @@ public sealed class MatchCommandTests : IDisposable
     [InlineData("--range 0:9 --sigma map.pfm", "map.pfm is named for two things to write")]
     [InlineData("--range 0:9 --truth t_*.pfm", "t_*.pfm has a *, but LEFT has none")]
     [InlineData("--range 0:9 --truth t.pfm --truth-scale 0", "--truth-scale 0")]
+    [InlineData("--range 0:9 --memory 0", "A memory limit of 0 MB allows nothing")]
     [InlineData("--range 0:500", "The search range 0:500 does not fit pictures 96 px wide")]
     public async Task Options_that_make_no_sense_exit_with_64_in_one_line(string options, string why)
     {
