@@ -40,8 +40,8 @@ public sealed class DisparityMap
     public ScalarMap? Sigma { get; }
 
     /// <summary>
-    /// How clearly the lowest total stands out, 0 to 1: one minus its ratio to the lowest total away from it. It orders matches; it is not a probability.
-    /// NaN where nothing could be compared.
+    /// How sure each match is, 0 to 1, by the recipe's measure, those that were refused included; NaN where nothing could be compared. It orders
+    /// matches; a probability it is only where a filter of the recipe makes it one.
     /// </summary>
     public ScalarMap Confidence { get; }
 

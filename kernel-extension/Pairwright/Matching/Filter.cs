@@ -15,6 +15,27 @@ public abstract class Filter : Stage
     public static Filter Median { get; } = new MedianFilter();
 
     /// <summary>
+    /// The median of the measured disparities around each measured pixel, weighted by how near their grey levels and places are, so that edges of
+    /// the picture stay edges of the map (Ma et al. 2013).
+    /// </summary>
+    /// <param name="window">The window's side in pixels, odd, 3 to 63.</param>
+    /// <param name="levels">The difference of grey level, on the 8-bit scale, at which a weight has fallen to 37 %.</param>
+    /// <exception cref="UserErrorException">A number does not fit.</exception>
+    public static Filter WeightedMedian(int window = 9, double levels = 12) => new WeightedMedianFilter(window, levels);
+
+    /// <summary>Removes what has too little texture along the row to be matched: what is left is noise's choice.</summary>
+    /// <param name="window">The side, in pixels and odd, of the window over which texture is looked for.</param>
+    /// <param name="timesNoise">How many times the noise of the left picture, estimated from itself, the root mean square of the gradient must be.</param>
+    /// <exception cref="UserErrorException">A number does not fit.</exception>
+    public static Filter PlainTexture(int window = 9, double timesNoise = 1.5) => new PlainTextureFilter(window, timesNoise);
+
+    /// <summary>
+    /// Fills every gap from its surroundings, along rather than across the picture's edges, and what is hidden from the right camera from behind
+    /// what hides it. Filled values are labelled so and never count as measured.
+    /// </summary>
+    public static Filter Fill { get; } = new FillFilter();
+
+    /// <summary>
     /// Least squares between the two pictures over a window, to free disparities of the pull towards whole pixels, and the σ of each from the
     /// pictures' noise and slopes (Lucas and Kanade 1981; Ackermann 1984; Sabater, Morel and Almansa 2011). What the pictures do not confirm is no match.
     /// </summary>
@@ -42,6 +63,9 @@ public abstract class Filter : Stage
     /// <see cref="SubPixel.PullSigmaPx"/>. Nothing for one that takes them as they are.
     /// </summary>
     public virtual double? PullSigmaPx => null;
+
+    /// <summary>Whether the filter weighs what the optimisation left of the totals, so that it must be kept.</summary>
+    internal virtual bool NeedsEvidence => false;
 
     /// <summary>Changes disparities and labels.</summary>
     /// <param name="map">The map.</param>

@@ -10,7 +10,7 @@ internal static class Matcher
     {
         Require(pair, recipe);
         var watch = Stopwatch.StartNew();
-        var map = new WorkingMap(pair, recipe.Range, settings.Threads);
+        var map = new WorkingMap(pair, recipe.Range, settings.Threads, recipe.Filters.Any(filter => filter.NeedsEvidence));
         stop.ThrowIfCancellationRequested();
         if (settings.PlainOnly || !FusedMatcher.TryRun(pair, recipe, settings, map, stop, progress))
         {

@@ -30,11 +30,14 @@ public sealed record Recipe
     /// <summary>What each match must pass, in order; uniqueness and left-right unless said otherwise.</summary>
     public ImmutableArray<Check> Checks { get; init; } = [Check.Uniqueness(), Check.LeftRight()];
 
+    /// <summary>How sure a match is; by its peak ratio unless said otherwise.</summary>
+    public Confidence Confidence { get; init; } = Confidence.PeakRatio;
+
     /// <summary>What passes over the whole map, in order; speckle removal, median and least squares unless said otherwise.</summary>
     public ImmutableArray<Filter> Filters { get; init; } = [Filter.Speckle(), Filter.Median, Filter.LeastSquares()];
 
     /// <summary>The stages in the order in which they work.</summary>
-    public IReadOnlyList<Stage> Stages => [Cost, Aggregation, Optimisation, SubPixel, .. Checks, .. Filters];
+    public IReadOnlyList<Stage> Stages => [Cost, Aggregation, Optimisation, SubPixel, .. Checks, Confidence, .. Filters];
 
     /// <summary>A short name that tells recipes apart: eight hexadecimal digits of a hash over the range and all stages.</summary>
     public string Id => Convert.ToHexStringLower(SHA256.HashData(Encoding.UTF8.GetBytes(ToString())))[..8];
@@ -121,6 +124,7 @@ public sealed record Recipe
         ("optimisation", Optimisation.ToString()),
         ("sub-pixel", SubPixel.ToString()),
         ("checks", Text(Checks)),
+        ("confidence", Confidence.ToString()),
         ("filters", Text(Filters)),
     ];
 

@@ -10,8 +10,8 @@ namespace Pairwright.Matching;
 /// <summary>Writes and reads recipes: YAML that a person can read and change.</summary>
 /// <remarks>
 /// Entries: <c>kind: pairwright-recipe</c>, <c>version: 1</c>; optionally <c>range</c> (least and greatest disparity in pixels, both searched);
-/// <c>cost</c>, <c>aggregation</c>, <c>optimisation</c>, <c>sub-pixel</c>, each with <c>method</c> and its settings; <c>checks</c> and
-/// <c>filters</c>, lists of the same, in the order in which they work.
+/// <c>cost</c>, <c>aggregation</c>, <c>optimisation</c>, <c>sub-pixel</c> and, where it is not the usual one, <c>confidence</c>, each with
+/// <c>method</c> and its settings; <c>checks</c> and <c>filters</c>, lists of the same, in the order in which they work.
 /// </remarks>
 public static class RecipeFile
 {
@@ -41,7 +41,7 @@ public static class RecipeFile
 
     internal static Recipe Parse(ReadOnlySpan<byte> content, string path, DisparityRange? range = null, IEnumerable<Stage>? ownStages = null)
     {
-        var file = YamlEntry.Parse(content, path).WithOnly("kind", "version", "range", "cost", "aggregation", "optimisation", "sub-pixel", "checks", "filters");
+        var file = YamlEntry.Parse(content, path).WithOnly("kind", "version", "range", "cost", "aggregation", "optimisation", "sub-pixel", "checks", "confidence", "filters");
         YamlHeader.Check(file, Kind, Version);
         var book = new StageBook(ownStages ?? []);
         return Recipe.For(range ?? ReadRange(file)) with
@@ -51,6 +51,7 @@ public static class RecipeFile
             Optimisation = (Optimisation)book.Read(StageKind.Optimisation, file.Required("optimisation")),
             SubPixel = (SubPixel)book.Read(StageKind.SubPixel, file.Required("sub-pixel")),
             Checks = file.Required("checks").Parts().Select(entry => (Check)book.Read(StageKind.Check, entry)).ToImmutableArray(),
+            Confidence = file.Optional("confidence") is { } confidence ? (Confidence)book.Read(StageKind.Confidence, confidence) : Confidence.PeakRatio,
             Filters = file.Required("filters").Parts().Select(entry => (Filter)book.Read(StageKind.Filter, entry)).ToImmutableArray(),
         };
     }
@@ -69,6 +70,7 @@ public static class RecipeFile
         Append(text, StageKind.Optimisation, recipe.Optimisation);
         Append(text, StageKind.SubPixel, recipe.SubPixel);
         Append(text, "checks", recipe.Checks);
+        Append(text, StageKind.Confidence, recipe.Confidence);
         Append(text, "filters", recipe.Filters);
         return text.ToString();
     }

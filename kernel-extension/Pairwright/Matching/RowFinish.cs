@@ -20,7 +20,8 @@ internal static class RowFinish
         var start = row.V * width;
         row.Labels.CopyTo(map.LabelArray.AsSpan(start));
         Measured(row, map.DisparityArray.AsSpan(start, width));
-        Confidences(row.Lowest, row.SecondLowest, map.ConfidenceArray.AsSpan(start, width));
+        StageGuard.Run(recipe.Confidence, stop, () => recipe.Confidence.Fill(row, map.ConfidenceArray.AsSpan(start, width)));
+        map.Evidence?.Take(row);
     }
 
     // On entry the disparities are offsets from the winners.
@@ -76,24 +77,6 @@ internal static class RowFinish
         for (; u < labels.Length; u++)
         {
             map[u] = labels[u] == DisparityLabel.Measured ? disparity[u] : float.NaN;
-        }
-    }
-
-    // Two equal totals, zeros included, say nothing; NaN stays NaN.
-    private static void Confidences(ReadOnlySpan<float> lowest, ReadOnlySpan<float> second, Span<float> map)
-    {
-        var u = 0;
-        for (; u <= lowest.Length - Vector256<float>.Count; u += Vector256<float>.Count)
-        {
-            var (low, next) = (Vector256.Create(lowest[u..]), Vector256.Create(second[u..]));
-            var confidence = Vector256<float>.One - low / next;
-            confidence = Vector256.ConditionalSelect(Vector256.Equals(next, Vector256.Create(float.PositiveInfinity)), Vector256<float>.One, confidence);
-            Vector256.ConditionalSelect(Vector256.Equals(low, next), Vector256<float>.Zero, confidence).CopyTo(map[u..]);
-        }
-
-        for (; u < lowest.Length; u++)
-        {
-            map[u] = second[u] == lowest[u] ? 0 : float.IsPositiveInfinity(second[u]) ? 1 : 1 - lowest[u] / second[u];
         }
     }
 }

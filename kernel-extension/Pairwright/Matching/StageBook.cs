@@ -53,7 +53,13 @@ internal sealed class StageBook(IEnumerable<Stage> ownStages)
         new(StageKind.SubPixel, "equiangular", [], _ => SubPixel.Equiangular),
         new(StageKind.Check, "left-right", ["tolerance-px"], entry => Check.LeftRight(Whole(entry, "tolerance-px"))),
         new(StageKind.Check, "uniqueness", ["margin"], entry => Check.Uniqueness(Number(entry, "margin"))),
+        new(StageKind.Confidence, "peak ratio", [], _ => Confidence.PeakRatio),
+        new(StageKind.Confidence, "curvature", [], _ => Confidence.Curvature),
+        new(StageKind.Confidence, "left-right", [], _ => Confidence.LeftRight),
         new(StageKind.Filter, "speckle", ["smallest-px", "step-px"], entry => Filter.Speckle(Whole(entry, "smallest-px"), Number(entry, "step-px"))),
+        new(StageKind.Filter, "weighted median", ["window", "levels"], entry => Filter.WeightedMedian(Whole(entry, "window"), Number(entry, "levels"))),
+        new(StageKind.Filter, "plain texture", ["window", "times-noise"], entry => Filter.PlainTexture(Whole(entry, "window"), Number(entry, "times-noise"))),
+        new(StageKind.Filter, "fill", [], _ => Filter.Fill),
         new(StageKind.Filter, "median", [], _ => Filter.Median),
         new(StageKind.Filter, "least squares", ["window"], entry => Filter.LeastSquares(Whole(entry, "window"))),
     ];

@@ -8,6 +8,7 @@ internal static class StageKind
     public const string Optimisation = "optimisation";
     public const string SubPixel = "sub-pixel";
     public const string Check = "check";
+    public const string Confidence = "confidence";
     public const string Filter = "filter";
 
     /// <summary>The place that a stage can stand at.</summary>
@@ -18,6 +19,7 @@ internal static class StageKind
         Matching.Optimisation => Optimisation,
         Matching.SubPixel => SubPixel,
         Matching.Check => Check,
+        Matching.Confidence => Confidence,
         Matching.Filter => Filter,
         _ => "stage",
     };

@@ -7,12 +7,13 @@ namespace Pairwright.Matching;
 /// <remarks>Row after row, one entry per pixel.</remarks>
 public sealed class WorkingMap
 {
-    internal WorkingMap(RectifiedPair pair, DisparityRange range, int? threads = null)
+    internal WorkingMap(RectifiedPair pair, DisparityRange range, int? threads = null, bool withEvidence = false)
     {
         (Pair, Range, Threads) = (pair, range, threads ?? Environment.ProcessorCount);
         DisparityArray = new float[pair.Size.Area];
         ConfidenceArray = new float[pair.Size.Area];
         LabelArray = new DisparityLabel[pair.Size.Area];
+        Evidence = withEvidence ? new(pair.Size) : null;
     }
 
     /// <summary>The pair that is matched.</summary>
@@ -39,6 +40,8 @@ public sealed class WorkingMap
     internal float[] DisparityArray { get; }
 
     internal float[] ConfidenceArray { get; }
+
+    internal MatchEvidence? Evidence { get; }
 
     internal float[]? SigmaArray { get; set; }
 

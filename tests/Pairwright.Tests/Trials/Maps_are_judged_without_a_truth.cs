@@ -37,12 +37,11 @@ public class Maps_are_judged_without_a_truth
     public void Repeats_show_the_noise_that_was_put_in()
     {
         // Normal noise of 0.05 px over five repeats; the pooled deviation of 4 · 2400 degrees of freedom lies within 3 % with all but certainty.
-        var random = new Random(12);
-        double Normal() => Math.Sqrt(-2 * Math.Log(1 - random.NextDouble())) * Math.Cos(2 * Math.PI * random.NextDouble());
+        var noise = new NormalNumbers(12);
         var pair = TestPairs.RandomDots(60, 40, (_, _) => 0);
         var maps = Enumerable.Range(0, 5)
             .Select(repeat => DisparityMap.FromValues(
-                pair, ScalarMap.From(pair.Size, (u, v) => u == 7 && repeat == 3 || u == 8 ? float.NaN : (float)(10 + 0.1 * u + 0.05 * Normal())), "test"))
+                pair, ScalarMap.From(pair.Size, (u, v) => u == 7 && repeat == 3 || u == 8 ? float.NaN : (float)(10 + 0.1 * u + 0.05 * noise.Next())), "test"))
             .ToArray();
         var agreement = RepeatAgreement.Of(maps);
         Assert.Equal((5, 58 * 40, 40), (agreement.Repeats, agreement.AlwaysMeasured, agreement.SometimesMeasured));
