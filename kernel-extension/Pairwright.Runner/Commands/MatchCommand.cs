@@ -32,9 +32,9 @@ internal sealed class MatchCommand(IAnsiConsole console) : AsyncCommand<MatchSet
                     continue;
                 }
 
-                var (map, accuracy) = PairMatcher.Match(files, job, stop, progress.Of(files));
-                PairRecord.Write(files, madeFrom, map, accuracy);
-                progress.Done(files, map, accuracy);
+                var result = PairMatcher.Match(files, job, stop, progress.Of(files));
+                PairRecord.Write(files, madeFrom, result);
+                progress.Done(files, result);
             }
             catch (OperationCanceledException)
             {

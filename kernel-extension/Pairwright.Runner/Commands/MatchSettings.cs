@@ -15,7 +15,7 @@ internal sealed class MatchSettings : CommandSettings
     public string Right { get; init; } = "";
 
     [CommandOption("--out <FILE>", isRequired: true)]
-    [Description("The disparity map to write (.pfm, .tif or .png): measured values only. A .json file beside it says how it was made and how it came out.")]
+    [Description("The disparity map to write (.pfm, .tif or .png): measured values only, unless --fill is given. A .json file beside it says how it was made and how it came out.")]
     public string Out { get; init; } = "";
 
     [CommandOption("--recipe <FILE>")]
@@ -38,16 +38,20 @@ internal sealed class MatchSettings : CommandSettings
     [Description("Focal length, baseline and offset of pictures that are rectified already.")]
     public string? Geometry { get; init; }
 
+    [CommandOption("--fill")]
+    [Description("Fill the gaps of the map from their surroundings; a picture beside the map, .filled.png, is white where a value was filled and not measured.")]
+    public bool Fill { get; init; }
+
     [CommandOption("--sigma <FILE>")]
-    [Description("Also write the standard uncertainty of each disparity, in pixels.")]
+    [Description("Also write the standard uncertainty of each measured disparity, in pixels.")]
     public string? Sigma { get; init; }
 
     [CommandOption("--depth <FILE>")]
-    [Description("Also write the depth along the rectified left axis, in millimetres.")]
+    [Description("Also write the measured depth along the rectified left axis, in millimetres.")]
     public string? Depth { get; init; }
 
     [CommandOption("--cloud <FILE>")]
-    [Description("Also write the points in the left camera's frame, in millimetres (.ply).")]
+    [Description("Also write the measured points in the left camera's frame, in millimetres (.ply).")]
     public string? Cloud { get; init; }
 
     [CommandOption("--truth <FILE>")]

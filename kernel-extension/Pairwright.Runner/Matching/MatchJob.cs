@@ -39,9 +39,9 @@ internal sealed record MatchJob(
 
         var rectification = settings.Rig is { } rig ? Rectification.Of(RigFile.Read(rig)) : null;
         var geometry = rectification?.Geometry ?? (settings.Geometry is { } file ? RectifiedGeometryFile.Read(file) : null);
-        var range = RangeOf(settings, geometry);
+        var recipe = RecipeOf(settings, RangeOf(settings, geometry));
         return new MatchJob(
-            RecipeOf(settings, range),
+            settings.Fill && !recipe.Filters.Contains(Filter.Fill) ? recipe with { Filters = recipe.Filters.Add(Filter.Fill) } : recipe,
             rectification,
             rectification is null ? geometry : null,
             settings.Rig ?? settings.Geometry,

@@ -46,6 +46,7 @@ internal static class PairFinder
             right.With(part),
             truth?.With(part),
             map.With(part),
+            settings.Fill ? Path.ChangeExtension(map.With(part), ".filled.png") : null,
             sigma?.With(part),
             depth?.With(part),
             cloud?.With(part));

@@ -8,9 +8,9 @@ namespace Pairwright.Runner.Matching;
 /// <summary>Matches one pair and writes what was asked for.</summary>
 internal static class PairMatcher
 {
-    /// <returns>The map, and how near it comes to the truth where that is known.</returns>
+    /// <returns>The map, and where the truth is known how near the measured values come to it, and all of them where gaps were filled.</returns>
     /// <exception cref="UserErrorException">A file cannot be read or written, or the pair cannot be matched.</exception>
-    public static (DisparityMap Map, DisparityAccuracy? Accuracy) Match(PairFiles files, MatchJob job, CancellationToken stop, IProgress<double> progress)
+    public static PairResult Match(PairFiles files, MatchJob job, CancellationToken stop, IProgress<double> progress)
     {
         var pair = job.Rectification is { } rectification
             ? StereoPair.Read(files.Left, files.Right, rectification.Rig).Rectify(rectification)
@@ -23,7 +23,15 @@ internal static class PairMatcher
         }
 
         var map = pair.Match(job.Recipe, stop, progress, job.MemoryMb);
-        MapFile.Write(Measured(map), files.Map);
+        if (files.Filled is { } filled)
+        {
+            MapFile.Write(map.Disparity, files.Map);
+            WhiteWhereFilled(map).WritePng(filled);
+        }
+        else
+        {
+            MapFile.Write(Measured(map), files.Map);
+        }
         if (files.Sigma is { } sigma)
         {
             MapFile.Write(
@@ -44,10 +52,23 @@ internal static class PairMatcher
             }
         }
 
-        return (map, truth is null ? null : DisparityAccuracy.Of(map, truth));
+        return new PairResult(
+            map,
+            truth is null ? null : DisparityAccuracy.Of(map, truth),
+            truth is null || files.Filled is null ? null : DisparityAccuracy.Of(map, truth, withFilled: true));
     }
 
     /// <summary>Whatever a recipe fills in was not measured.</summary>
     private static ScalarMap Measured(DisparityMap map) =>
         ScalarMap.From(map.Size, (u, v) => map.Labels[u, v] == DisparityLabel.Measured ? map.Disparity[u, v] : float.NaN);
+
+    private static Picture WhiteWhereFilled(DisparityMap map)
+    {
+        var levels = new ushort[map.Size.Area];
+        for (var i = 0; i < levels.Length; i++)
+        {
+            levels[i] = map.Labels.Labels[i] == DisparityLabel.Filled ? byte.MaxValue : (ushort)0;
+        }
+        return new Picture(map.Size, levels);
+    }
 }

@@ -1,7 +1,6 @@
 using System.Text.Encodings.Web;
 using System.Text.Json;
 using System.Text.Json.Nodes;
-using Pairwright.Matching;
 using Pairwright.Trials;
 
 namespace Pairwright.Runner.Matching;
@@ -50,19 +49,20 @@ internal static class PairRecord
         }
     }
 
-    public static void Write(PairFiles files, JsonObject madeFrom, DisparityMap map, DisparityAccuracy? accuracy) =>
+    public static void Write(PairFiles files, JsonObject madeFrom, PairResult result) =>
         AtomicFile.WriteText(files.Record, new JsonObject
         {
             ["schema"] = "pairwright match",
             ["schemaVersion"] = SchemaVersion,
             [Made] = madeFrom,
-            ["width"] = map.Size.Width,
-            ["height"] = map.Size.Height,
-            ["measuredShare"] = Number(map.MatchedShare),
-            ["rangeEndShare"] = Number(map.RangeEndShare),
-            ["seconds"] = map.Elapsed.TotalSeconds,
-            ["warnings"] = new JsonArray([.. map.Pair.Warnings.Select(warning => (JsonNode)warning)]),
-            ["accuracy"] = accuracy is null ? null : Accuracy(accuracy),
+            ["width"] = result.Map.Size.Width,
+            ["height"] = result.Map.Size.Height,
+            ["measuredShare"] = Number(result.Map.MatchedShare),
+            ["rangeEndShare"] = Number(result.Map.RangeEndShare),
+            ["seconds"] = result.Map.Elapsed.TotalSeconds,
+            ["warnings"] = new JsonArray([.. result.Map.Pair.Warnings.Select(warning => (JsonNode)warning)]),
+            ["accuracy"] = result.Accuracy is { } measured ? Accuracy(measured) : null,
+            ["accuracyWithFilled"] = result.AccuracyWithFilled is { } all ? Accuracy(all) : null,
         }.ToJsonString(Written) + "\n");
 
     private static JsonObject Accuracy(DisparityAccuracy accuracy)

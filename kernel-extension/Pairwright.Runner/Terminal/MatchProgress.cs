@@ -41,8 +41,9 @@ internal sealed class MatchProgress
         return new Share(this, files);
     }
 
-    public void Done(PairFiles files, DisparityMap map, DisparityAccuracy? accuracy)
+    public void Done(PairFiles files, PairResult result)
     {
+        var (map, accuracy, withFilled) = result;
         lock (_gate)
         {
             _done++;
@@ -54,6 +55,11 @@ internal sealed class MatchProgress
             if (_pairs.Count == 1 && accuracy is not null)
             {
                 Show(accuracy);
+            }
+            if (_pairs.Count == 1 && withFilled is not null)
+            {
+                _line.Stand("  measured and filled values together:");
+                Show(withFilled);
             }
         }
     }

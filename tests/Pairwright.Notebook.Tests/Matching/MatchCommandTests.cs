@@ -34,6 +34,29 @@ public sealed class MatchCommandTests : IDisposable
     }
 
     [Fact]
+    public async Task Gaps_are_filled_only_when_asked_for_and_a_mask_says_which_values_were_not_measured()
+    {
+        _folder.AddPair("left.png", "right.png");
+        _folder.AddTruth("truth.pfm", MatchFolder.Disparity);
+        await _folder.RunAsync("left.png", "right.png", "--range", "0:12", "--out", "measured.pfm");
+        await _folder.RunAsync("left.png", "right.png", "--range", "0:12", "--truth", "truth.pfm", "--fill", "--out", "all.pfm");
+
+        Assert.Equal((0, ""), (_folder.ExitCode, _folder.Errors));
+        var (measured, all, mask) = (MapFile.Read(_folder["measured.pfm"]), MapFile.Read(_folder["all.pfm"]), Mask.Read(_folder["all.filled.png"]));
+        Assert.Equal(1, all.ValidShare);
+        Assert.InRange(mask.Share, 0.01, 0.3);
+        for (var i = 0; i < all.Values.Length; i++)
+        {
+            Assert.Equal(float.IsNaN(measured.Values[i]), mask.Usable[i]);
+            Assert.Equal(mask.Usable[i] ? MatchFolder.Disparity : measured.Values[i], all.Values[i], 0.1);
+        }
+
+        var record = _folder.Record("all.json");
+        Assert.Equal(1, record["accuracyWithFilled"]!["regions"]![0]!["measuredShare"]!.GetValue<double>());
+        Assert.Equal(measured.ValidShare, record["accuracy"]!["regions"]![0]!["measuredShare"]!.GetValue<double>(), 1e-9);
+    }
+
+    [Fact]
     public async Task With_a_rig_depth_and_cloud_lie_where_Z_equals_focal_length_times_baseline_over_disparity()
     {
         _folder.AddPair("left.png", "right.png");
