@@ -11,7 +11,10 @@ public class A_match_can_be_stopped_and_watched
         using var stop = new CancellationTokenSource();
         var progress = new Reports(share => stop.Cancel());
         Assert.ThrowsAny<OperationCanceledException>(() => TestPairs.RandomDots(150, 80, (_, _) => 5).Match(Recipe.For(new DisparityRange(0, 31)), stop.Token, progress));
-        Assert.Single(progress.Shares);
+
+        // Another thread may be about to report when this one asks to stop; none comes to the end.
+        Assert.NotEmpty(progress.Shares);
+        Assert.All(progress.Shares, share => Assert.True(share < 1));
     }
 
     [Fact]
